@@ -135,7 +135,9 @@ export function readSettings(env, root = process.cwd()) {
     host: hostName,
     dataDir: dataDir(env.DATA_DIR || '.data', root),
     databaseUrl: optional('DATABASE_URL', databaseUrl),
-    dbBufferMb: optional('DB_BUFFER_MB', (text) => wholeNumber('DB_BUFFER_MB', text, 32, 1048576)) ?? quarterOfMemory(),
+    dbBufferMb:
+      optional('DB_BUFFER_MB', (text) => wholeNumber('DB_BUFFER_MB', text, 32, 1048576)) ??
+      quarterOfMemory(),
     baseUrl: optional('BASE_URL', baseUrl) ?? addressOf(hostName, port),
     baseUrlGiven: Boolean(env.BASE_URL),
     sessionSecret: optional('SESSION_SECRET', secret),

@@ -13,7 +13,9 @@ declare module 'vitest' {
 export default function globalDatabase(project: TestProject): () => Promise<void> {
   const url = process.env.TEST_DATABASE_URL
   if (!url) {
-    throw new Error('TEST_DATABASE_URL is not set; `npm test -- --only api` starts a database itself')
+    throw new Error(
+      'TEST_DATABASE_URL is not set; `npm test -- --only api` starts a database itself',
+    )
   }
   const run = randomBytes(4).toString('hex')
   project.provide('databaseRun', run)
