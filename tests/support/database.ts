@@ -1,7 +1,8 @@
 import { createConnection } from 'mariadb'
 import type { Sequelize } from 'sequelize'
 import { afterAll, inject } from 'vitest'
-import { createDatabase, migrate } from '../../server/database/migrate.js'
+import { createDatabase } from '../../server/database/connect.js'
+import { migrate } from '../../server/database/migrate.js'
 
 /**
  * A real MariaDB for the `api` and `jobs` projects. Every Vitest worker has a schema of its own,

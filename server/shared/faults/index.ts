@@ -1,0 +1,2 @@
+export * from './tree.js'
+export * from './rules.js'
