@@ -1,0 +1,47 @@
+import { randomBytes } from 'node:crypto'
+import { readdirSync, readFileSync } from 'node:fs'
+import { until } from './programs.mjs'
+
+/**
+ * Programs that start others (a browser, say) do not always take them along when they end. A test run
+ * marks the environment of everything that it starts, and by that mark finds what is left.
+ */
+
+const NAME = 'DUNTLESS_TEST_RUN'
+const GRACE_MS = 2000
+
+/** @returns {Record<string, string>} variables for the environment of every program of the run */
+export const newMark = () => ({ [NAME]: randomBytes(12).toString('hex') })
+
+/** Ends whatever still carries the mark. */
+export async function endMarked(mark) {
+  const needle = `${NAME}=${mark[NAME]}`
+  const gone = () => marked(needle).length === 0
+  if (await until(gone, GRACE_MS)) return
+  for (const pid of marked(needle)) {
+    try {
+      process.kill(pid, 'SIGKILL')
+    } catch {
+      // Ended meanwhile.
+    }
+  }
+  await until(gone, GRACE_MS)
+}
+
+function marked(needle) {
+  try {
+    return readdirSync('/proc')
+      .filter((name) => /^\d+$/.test(name) && carries(name, needle))
+      .map(Number)
+  } catch {
+    return []
+  }
+}
+
+function carries(pid, needle) {
+  try {
+    return readFileSync(`/proc/${pid}/environ`, 'latin1').split('\0').includes(needle)
+  } catch {
+    return false
+  }
+}
