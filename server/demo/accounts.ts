@@ -1,6 +1,6 @@
 import type { Role } from '../contract/roles.js'
 
-export { DEMO_PASSWORD } from '../shared/demoPassword.js'
+export { DEMO_PASSWORD } from '../shared/demo.js'
 
 /** An account that the sign-in page offers in demo mode. */
 export interface DemoAccount {
