@@ -8,6 +8,7 @@ import helmet from 'helmet'
 import { pinoHttp } from 'pino-http'
 import type { Deps } from './deps.js'
 import { createAuthentication } from './middleware/authenticate.js'
+import { SESSION_COOKIE } from './middleware/endSession.js'
 import { errorHandler, noSuchRoute } from './middleware/errorHandler.js'
 import { requestContext } from './middleware/requestContext.js'
 import { sameOrigin } from './middleware/sameOrigin.js'
@@ -42,7 +43,13 @@ export function createApp(deps: Deps): { app: Express; close: () => void } {
   const secure = config.baseUrl.startsWith('https:')
 
   app.use(requestContext)
-  app.use(pinoHttp({ logger, genReqId: (req) => (req as { requestId?: string }).requestId ?? '', autoLogging: false }))
+  app.use(
+    pinoHttp({
+      logger,
+      genReqId: (req) => (req as { requestId?: string }).requestId ?? '',
+      autoLogging: false,
+    }),
+  )
   app.use(
     helmet({
       contentSecurityPolicy: {
@@ -76,13 +83,15 @@ export function createApp(deps: Deps): { app: Express; close: () => void } {
       userId: data.passport?.user ? Number(data.passport.user.split(':')[0]) : null,
     }),
   })
-  const auth = createAuthentication((email, password, req) => verifyPassword({ email, password, address: req.ip ?? '' }, deps))
+  const auth = createAuthentication((email, password, req) =>
+    verifyPassword({ email, password, address: req.ip ?? '' }, deps),
+  )
 
   mount(app, healthRoutes, deps)
   app.use(
     '/api',
     session({
-      name: 'sid',
+      name: SESSION_COOKIE,
       secret: config.sessionSecret,
       resave: false,
       saveUninitialized: false,
@@ -113,7 +122,12 @@ function serveClient(app: Express, folder: string): void {
     '/assets',
     express.static(join(folder, 'assets'), { immutable: true, maxAge: '1y', fallthrough: false }),
   )
-  app.use(express.static(folder, { index: false, setHeaders: (res) => res.setHeader('Cache-Control', 'no-cache') }))
+  app.use(
+    express.static(folder, {
+      index: false,
+      setHeaders: (res) => res.setHeader('Cache-Control', 'no-cache'),
+    }),
+  )
   app.get('/{*path}', (_req, res, next) => {
     res.setHeader('Cache-Control', 'no-cache')
     res.sendFile('index.html', { root: folder }, (error) => {

@@ -50,7 +50,12 @@ export interface Config {
   logLevel: LogLevel
   /** The built client, absolute; the folder is missing in dev and in API tests. */
   clientFolder: string
+  /** What hashing a password costs (argon2id): KiB of memory, passes, threads. Tests use less. */
+  passwordCost: { memoryCost: number; timeCost: number; parallelism: number }
 }
+
+/** The least that OWASP's password storage cheat sheet gives for argon2id (from memory of it). */
+const PASSWORD_COST = { memoryCost: 19_456, timeCost: 2, parallelism: 1 }
 
 export { SettingError as ConfigError, type LogLevel }
 
@@ -75,6 +80,7 @@ export function readConfig(env: NodeJS.ProcessEnv = process.env): Config {
     trustProxy: settings.trustProxy,
     logLevel: settings.logLevel,
     clientFolder: resolve('dist/client'),
+    passwordCost: PASSWORD_COST,
   }
 }
 

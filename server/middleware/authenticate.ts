@@ -21,7 +21,10 @@ type Verify = (email: string, password: string, req: Request) => Promise<SignedI
  * passport-local on server sessions. The session holds the person's id and epoch; a session of an
  * older epoch is nobody's. `verify` throws an AppError for a wrong guess or too many of them.
  */
-export function createAuthentication(verify: Verify): { session: RequestHandler; signIn: (req: Request, res: Response) => Promise<SignedInUser> } {
+export function createAuthentication(verify: Verify): {
+  session: RequestHandler
+  signIn: (req: Request, res: Response) => Promise<SignedInUser>
+} {
   const passport = new Passport() as unknown as PassportStatic
   passport.serializeUser((user, done) => done(null, `${user.id}:${user.sessionEpoch}`))
   passport.deserializeUser((key: string, done) => {
@@ -32,24 +35,32 @@ export function createAuthentication(verify: Verify): { session: RequestHandler;
     )
   })
   passport.use(
-    new LocalStrategy({ usernameField: 'email', passReqToCallback: true }, (req, email, password, done) => {
-      verify(email, password, req).then(
-        (user) => done(null, user),
-        (error: unknown) => done(error),
-      )
-    }),
+    new LocalStrategy(
+      { usernameField: 'email', passReqToCallback: true },
+      (req, email, password, done) => {
+        verify(email, password, req).then(
+          (user) => done(null, user),
+          (error: unknown) => done(error),
+        )
+      },
+    ),
   )
   return {
     session: passport.session() as RequestHandler,
     /** Checks the body's e-mail and password; on success the session gets a new id. */
     signIn: (req, res) =>
       new Promise<SignedInUser>((resolve, reject) => {
-        const authenticate = passport.authenticate('local', (error: unknown, user: SignedInUser | false) => {
-          if (error) return reject(error as Error)
-          if (!user) return reject(new Error('passport-local gave no user'))
-          req.logIn(user, (failed: unknown) => (failed ? reject(failed as Error) : resolve(user)))
-        }) as RequestHandler
-        void authenticate(req, res, (error?: unknown) => reject(error as Error))
+        const authenticate = passport.authenticate(
+          'local',
+          (error: Error | null, user: SignedInUser | false) => {
+            if (error) return reject(error)
+            if (!user) return reject(new Error('passport-local gave no user'))
+            req.logIn(user, (failed?: Error | null) => (failed ? reject(failed) : resolve(user)))
+          },
+        ) as RequestHandler
+        void authenticate(req, res, (error?: Error) =>
+          reject(error ?? new Error('No answer of passport')),
+        )
       }),
   }
 }

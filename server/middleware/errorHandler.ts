@@ -12,7 +12,8 @@ export const noSuchRoute: RequestHandler = () => {
 function fromParser(error: unknown): AppError | null {
   const type = (error as { type?: unknown }).type
   if (type === 'entity.too.large') return new AppError('too-large', 'That is too much at once.')
-  if (type === 'entity.parse.failed') return new AppError('invalid', 'The request is not valid JSON.')
+  if (type === 'entity.parse.failed')
+    return new AppError('invalid', 'The request is not valid JSON.')
   return null
 }
 
@@ -21,8 +22,10 @@ export function errorHandler(logger: Logger): ErrorRequestHandler {
   return (error: unknown, req, res, next) => {
     if (res.headersSent) return next(error)
     const known = error instanceof AppError ? error : fromParser(error)
-    if (!known) logger.error({ err: error, requestId: req.requestId, path: req.path }, 'request failed')
-    const shown = known ?? new AppError('unexpected', 'Something went wrong on our side. It has been noted.')
+    if (!known)
+      logger.error({ err: error, requestId: req.requestId, path: req.path }, 'request failed')
+    const shown =
+      known ?? new AppError('unexpected', 'Something went wrong on our side. It has been noted.')
     const body: ErrorBody = {
       error: {
         code: shown.code,

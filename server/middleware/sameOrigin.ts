@@ -10,7 +10,10 @@ const SAFE = ['GET', 'HEAD', 'OPTIONS']
  * @param origin our public origin, without a slash at the end
  * @param exempt method and path of requests that carry their token in the address
  */
-export function sameOrigin(origin: string, exempt: (method: string, path: string) => boolean): RequestHandler {
+export function sameOrigin(
+  origin: string,
+  exempt: (method: string, path: string) => boolean,
+): RequestHandler {
   return (req, _res, next) => {
     if (SAFE.includes(req.method) || exempt(req.method, req.path)) return next()
     const site = req.get('sec-fetch-site')

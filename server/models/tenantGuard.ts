@@ -14,6 +14,23 @@ export class UnscopedQueryError extends Error {
   }
 }
 
+declare module 'sequelize' {
+  /* eslint-disable @typescript-eslint/no-unused-vars, @typescript-eslint/no-explicit-any -- as in the package */
+  interface FindOptions<TAttributes = any> {
+    acrossNetworks?: boolean
+  }
+  interface CountOptions<TAttributes = any> {
+    acrossNetworks?: boolean
+  }
+  interface UpdateOptions<TAttributes = any> {
+    acrossNetworks?: boolean
+  }
+  interface DestroyOptions<TAttributes = any> {
+    acrossNetworks?: boolean
+  }
+  /* eslint-enable @typescript-eslint/no-unused-vars, @typescript-eslint/no-explicit-any */
+}
+
 interface GuardedOptions {
   where?: unknown
   acrossNetworks?: boolean

@@ -3,18 +3,31 @@ import type { Sequelize } from 'sequelize'
 import { Membership, Network, Studio } from '../models/index.js'
 import type { NetworkRow, Scope } from '../policies/index.js'
 
-function row(network: Network): NetworkRow {
-  const { id, uid, slug, name, timeZone, currency, temperatureUnit, lengthUnit, weekStart } = network
+export type { NetworkRow }
+
+/** The fields of a network that a scope carries. */
+export function networkRow(network: Network): NetworkRow {
+  const { id, uid, slug, name, timeZone, currency, temperatureUnit, lengthUnit, weekStart } =
+    network
   return { id, uid, slug, name, timeZone, currency, temperatureUnit, lengthUnit, weekStart }
 }
 
 async function studioIdsOf(networkId: number): Promise<number[]> {
-  const studios = await Studio.findAll({ where: { networkId }, attributes: ['id'], order: ['id'], raw: true })
+  const studios = await Studio.findAll({
+    where: { networkId },
+    attributes: ['id'],
+    order: ['id'],
+    raw: true,
+  })
   return studios.map((studio) => studio.id)
 }
 
 /** The scope of a person in the network of that slug; null when there is none or they are no member. */
-export async function scopeFor(slug: string, userId: number, requestId: string): Promise<Scope | null> {
+export async function scopeFor(
+  slug: string,
+  userId: number,
+  requestId: string,
+): Promise<Scope | null> {
   const network = await Network.findOne({ where: { slug } })
   if (!network) return null
   const [held, studioIds] = await Promise.all([
@@ -23,7 +36,7 @@ export async function scopeFor(slug: string, userId: number, requestId: string):
   ])
   if (held.length === 0) return null
   return {
-    network: row(network),
+    network: networkRow(network),
     networkId: network.id,
     userId,
     roles: held.map(({ role, studioId }) => ({ role, studioId })),
@@ -38,7 +51,7 @@ export async function systemScope(slugOrId: string | number): Promise<Scope | nu
   const network = await Network.findOne({ where })
   if (!network) return null
   return {
-    network: row(network),
+    network: networkRow(network),
     networkId: network.id,
     userId: null,
     roles: [

@@ -6,6 +6,7 @@ import { AppError, forbidden, invalid, notFound } from '../errors.js'
 import { can } from '../policies/index.js'
 import type { Scope, Target } from '../policies/index.js'
 import type { SignedInUser } from '../middleware/authenticate.js'
+import type {} from '../middleware/requestTypes.js'
 
 export type Method = 'get' | 'post' | 'put' | 'patch' | 'delete'
 
@@ -32,14 +33,22 @@ export interface Context<P, Q, B, L> {
  * `output` is a contract schema; keys that it does not list never leave the server. `raw` handlers
  * (CSV) write to `res` themselves.
  */
-export interface RouteSpec<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType, L, O extends z.ZodType> {
+export interface RouteSpec<
+  P extends z.ZodType,
+  Q extends z.ZodType,
+  B extends z.ZodType,
+  L,
+  O extends z.ZodType,
+> {
   method: Method
   path: string
   ability: Ability | 'signed-in' | 'public'
   params?: P
   query?: Q
   body?: B
-  load?: (context: Omit<Context<z.output<P>, z.output<Q>, z.output<B>, undefined>, 'loaded'>) => Promise<L>
+  load?: (
+    context: Omit<Context<z.output<P>, z.output<Q>, z.output<B>, undefined>, 'loaded'>,
+  ) => Promise<L>
   status?: number
   output: O | 'raw'
   /** `token-in-url`: a foreign origin may post here. */

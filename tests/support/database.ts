@@ -1,8 +1,8 @@
-import { createConnection } from 'mariadb'
 import type { Sequelize } from 'sequelize'
 import { afterAll, inject } from 'vitest'
 import { createDatabase } from '../../server/database/connect.js'
 import { migrate } from '../../server/database/migrate.js'
+import { connectToServer } from './serverConnection.js'
 
 /**
  * A real MariaDB for the `api` and `jobs` projects. Every Vitest worker has a schema of its own,
@@ -32,7 +32,7 @@ function serverUrl(): string {
 
 async function open(): Promise<Sequelize> {
   const url = testDatabaseUrl()
-  const connection = await createConnection(serverUrl())
+  const connection = await connectToServer(serverUrl())
   try {
     await connection.query(`CREATE DATABASE IF NOT EXISTS \`${new URL(url).pathname.slice(1)}\``)
   } finally {

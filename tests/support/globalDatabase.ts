@@ -1,6 +1,6 @@
 import { randomBytes } from 'node:crypto'
-import { createConnection } from 'mariadb'
 import type { TestProject } from 'vitest/node'
+import { connectToServer } from './serverConnection.js'
 
 declare module 'vitest' {
   interface ProvidedContext {
@@ -23,7 +23,7 @@ export default function globalDatabase(project: TestProject): () => Promise<void
 }
 
 async function dropSchemas(url: string, prefix: string): Promise<void> {
-  const connection = await createConnection(url)
+  const connection = await connectToServer(url)
   try {
     const rows: { name: string }[] = await connection.query(
       'SELECT schema_name AS name FROM information_schema.schemata WHERE LEFT(schema_name, ?) = ?',

@@ -2,8 +2,9 @@ import type { SignedInUser } from './authenticate.js'
 import type { Scope } from '../policies/index.js'
 
 declare global {
-  // eslint-disable-next-line @typescript-eslint/no-namespace
+  // eslint-disable-next-line @typescript-eslint/no-namespace -- how Express wants to be told
   namespace Express {
+    // eslint-disable-next-line @typescript-eslint/no-empty-object-type -- how passport wants to be told
     interface User extends SignedInUser {}
     interface Request {
       requestId: string
