@@ -2,7 +2,7 @@ import { spawn } from 'node:child_process'
 import { accessSync, constants, existsSync, readFileSync } from 'node:fs'
 import { delimiter, join } from 'node:path'
 import { atEnd, isEnding } from './ending.mjs'
-import { lastLines, Stop } from './say.mjs'
+import { gist, Stop } from './say.mjs'
 
 /** Starting, watching and stopping other programs. */
 
@@ -143,10 +143,7 @@ export async function run(command, args, { failure, check = true, ...options } =
   if (error) output += error.message
   if (check && code !== 0) {
     if (isEnding()) await new Promise(() => {})
-    throw new Stop(
-      failure ?? `${command} failed (${signal ?? `exit code ${code}`})`,
-      lastLines(output),
-    )
+    throw new Stop(failure ?? `${command} failed (${signal ?? `exit code ${code}`})`, gist(output))
   }
   return { code, signal, output }
 }

@@ -53,3 +53,11 @@ export class Stop extends Error {
 export function lastLines(text, count = 20) {
   return text.trimEnd().split('\n').slice(-count).join('\n')
 }
+
+/** The beginning and the end of what a program wrote: the cause is in one of the two. */
+export function gist(text, count = 24) {
+  const lines = text.trimEnd().split('\n')
+  if (lines.length <= count) return lines.join('\n')
+  const half = count / 2
+  return [...lines.slice(0, half), '...', ...lines.slice(-half)].join('\n')
+}

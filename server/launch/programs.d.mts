@@ -1,0 +1,1 @@
+export declare function startOf(pid: number): string | null
