@@ -3,7 +3,15 @@
  * without colour. Pure geometry in px: a cell becomes paths, each with the role of its paint; the
  * paints themselves come from tokens (svg for mail and print) or from the stylesheet (screen).
  */
-export const CELL_KINDS = ['first', 'second', 'refire', 'waster', 'undecided', 'notLookedAt', 'turnedAway'] as const
+export const CELL_KINDS = [
+  'first',
+  'second',
+  'refire',
+  'waster',
+  'undecided',
+  'notLookedAt',
+  'turnedAway',
+] as const
 export type CellKind = (typeof CELL_KINDS)[number]
 
 /** One piece, or several of a kind where a cell stands for more. */
@@ -17,7 +25,19 @@ export interface BoardCell {
 
 /** What a path is painted with, in the order in which paths lie on each other. */
 export const PAINT_ROLES = [
-  'sound', 'blemished', 'half', 'refire', 'waster', 'crack', 'open', 'dot', 'unseen', 'hatch', 'away', 'bar', 'tick',
+  'sound',
+  'blemished',
+  'half',
+  'refire',
+  'waster',
+  'crack',
+  'open',
+  'dot',
+  'unseen',
+  'hatch',
+  'away',
+  'bar',
+  'tick',
 ] as const
 export type PaintRole = (typeof PAINT_ROLES)[number]
 
@@ -39,7 +59,10 @@ export function cellShapes(cell: BoardCell, box: CellBox): Shape[] {
   const frame = outline(box, cell.late === true)
   switch (cell.kind) {
     case 'first':
-      return [{ role: 'sound', d: frame }, ...(cell.checked ? [{ role: 'tick' as const, d: tick(box) }] : [])]
+      return [
+        { role: 'sound', d: frame },
+        ...(cell.checked ? [{ role: 'tick' as const, d: tick(box) }] : []),
+      ]
     case 'second':
       return [
         { role: 'blemished', d: frame },
@@ -81,13 +104,22 @@ function at({ x, y, size, width }: CellBox, u: number, v: number): string {
 }
 
 function polygon(left: number, top: number, right: number, bottom: number, cut: number): string {
-  const start = cut > 0 ? `M${round(left)} ${round(top + cut)}L${round(left + cut)} ${round(top)}` : `M${round(left)} ${round(top)}`
+  const start =
+    cut > 0
+      ? `M${round(left)} ${round(top + cut)}L${round(left + cut)} ${round(top)}`
+      : `M${round(left)} ${round(top)}`
   return `${start}H${round(right)}V${round(bottom)}H${round(left)}Z`
 }
 
 function outline({ x, y, size, width }: CellBox, notched: boolean): string {
   const inset = Math.min(0.5, width / 4)
-  return polygon(x + inset, y + inset, x + width - inset, y + size - inset, notched ? Math.min(size * NOTCH, width / 2) : 0)
+  return polygon(
+    x + inset,
+    y + inset,
+    x + width - inset,
+    y + size - inset,
+    notched ? Math.min(size * NOTCH, width / 2) : 0,
+  )
 }
 
 function solid({ x, y, size, width }: CellBox, notched: boolean): string {

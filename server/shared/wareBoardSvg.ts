@@ -2,6 +2,7 @@
 import type { Palette } from './tokens.js'
 import { LIGHT } from './tokens.js'
 import type { BoardDrawing } from './wareBoard.js'
+import { drawCells } from './wareBoard.js'
 import type { PaintRole } from './wareBoardShapes.js'
 
 interface Paint {
@@ -46,10 +47,17 @@ export function dashOf(size: number): string {
  * A drawing as a whole `<svg>`. `label` is the text alternative; `palette` is light where nothing is
  * said (paper and most mails are white). Text is escaped; there is no other outside input.
  */
-export function boardSvg(drawing: BoardDrawing, size: number, label: string, palette: Readonly<Palette> = LIGHT): string {
+export function boardSvg(
+  drawing: BoardDrawing,
+  size: number,
+  label: string,
+  palette: Readonly<Palette> = LIGHT,
+): string {
   const paths = drawing.layers.map(({ role, d }) => {
     const { fill, stroke, dashed } = PAINTS[role]
-    const line = stroke ? ` stroke="${palette[stroke]}" stroke-width="${lineWidth(role, size)}"` : ''
+    const line = stroke
+      ? ` stroke="${palette[stroke]}" stroke-width="${lineWidth(role, size)}"`
+      : ''
     const dash = dashed ? ` stroke-dasharray="${dashOf(size)}"` : ''
     return `<path fill="${fill ? palette[fill] : 'none'}" fill-rule="evenodd"${line}${dash} d="${d}"/>`
   })
@@ -58,5 +66,19 @@ export function boardSvg(drawing: BoardDrawing, size: number, label: string, pal
 }
 
 function escapeText(text: string): string {
-  return text.replace(/&/g, '&amp;').replace(/</g, '&lt;').replace(/>/g, '&gt;').replace(/"/g, '&quot;')
+  return text
+    .replace(/&/g, '&amp;')
+    .replace(/</g, '&lt;')
+    .replace(/>/g, '&gt;')
+    .replace(/"/g, '&quot;')
+}
+
+/** The mark for a browser's tab, square: three cells, the last one cracked. */
+export function faviconSvg(): string {
+  const size = 15
+  return boardSvg(
+    drawCells([{ kind: 'first' }, { kind: 'first' }, { kind: 'waster' }], { size, columns: 2 }),
+    size,
+    'Duntless',
+  )
 }

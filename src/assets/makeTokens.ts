@@ -3,7 +3,18 @@
  * `npx tsx -e "import('./src/assets/makeTokens.ts').then((m) => process.stdout.write(m.tokensCss()))" > src/assets/tokens.css`
  * A unit test compares the two.
  */
-import { CONTENT_WIDTH, CORNER, cssName, DARK, FONT_FAMILY, LIGHT, PROSE_WIDTH, SPACE, TARGET, TYPE_SCALE } from '../../server/shared/tokens.js'
+import {
+  CONTENT_WIDTH,
+  CORNER,
+  cssName,
+  DARK,
+  FONT_FAMILY,
+  LIGHT,
+  PROSE_WIDTH,
+  SPACE,
+  TARGET,
+  TYPE_SCALE,
+} from '../../server/shared/tokens.js'
 import type { Palette } from '../../server/shared/tokens.js'
 
 /** The stylesheet with both themes: the system's, unless `data-theme` on <html> says otherwise. */
@@ -39,6 +50,8 @@ export function tokensCss(): string {
 }
 
 function colours(scheme: string, palette: Readonly<Palette>, indent: string): string[] {
-  const lines = Object.entries(palette).map(([key, colour]) => `${indent}${cssName(key)}: ${colour as string};`)
+  const lines = Object.entries(palette).map(
+    ([key, colour]) => `${indent}${cssName(key)}: ${colour.toLowerCase()};`,
+  )
   return [`${indent}color-scheme: ${scheme};`, ...lines]
 }

@@ -1,3 +1,4 @@
+import { readFileSync } from 'node:fs'
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { NO_COUNTS } from '../../server/shared/counts.js'
@@ -15,7 +16,7 @@ import {
   drawBoard,
   drawCells,
 } from '../../server/shared/wareBoard.js'
-import { boardSvg, dashOf, lineWidth } from '../../server/shared/wareBoardSvg.js'
+import { boardSvg, dashOf, faviconSvg, lineWidth } from '../../server/shared/wareBoardSvg.js'
 
 const few: BoardCounts = { first: 36, second: 1, waster: 3 }
 /** Area of the rectangles in a path made of M, H and V, px². */
@@ -24,7 +25,9 @@ const areaOf = (d: string): number =>
     .split('M')
     .filter((part) => /^[\d.]+ [\d.]+H/.test(part))
     .reduce((sum, part) => {
-      const [left, top, right, bottom] = (/^([\d.]+) ([\d.]+)H([\d.]+)V([\d.]+)/.exec(part) ?? []).slice(1).map(Number)
+      const [left, top, right, bottom] = (/^([\d.]+) ([\d.]+)H([\d.]+)V([\d.]+)/.exec(part) ?? [])
+        .slice(1)
+        .map(Number)
       return sum + ((right ?? 0) - (left ?? 0)) * ((bottom ?? 0) - (top ?? 0))
     }, 0)
 
@@ -42,7 +45,15 @@ describe('describeBoard', () => {
   })
 
   it('tells spot-checked pieces and late losses apart', () => {
-    const counts = { first: 1200, checked: 8, second: 2, waster: 3, late: { waster: 1 }, notLookedAt: 2, turnedAway: 1 }
+    const counts = {
+      first: 1200,
+      checked: 8,
+      second: 2,
+      waster: 3,
+      late: { waster: 1 },
+      notLookedAt: 2,
+      turnedAway: 1,
+    }
     expect(describeBoard(counts)).toBe(
       '1,208 pieces: 1,200 first (8 spot-checked), 2 seconds, 3 wasters (1 seen late), 2 not looked at, 1 turned away',
     )
@@ -80,11 +91,18 @@ describe('drawBoard', () => {
   })
 
   it('is no wider than its pieces', () => {
-    expect(drawBoard({ first: 3 }, { size: 24, columns: 10 })).toMatchObject({ width: 76, height: 24 })
+    expect(drawBoard({ first: 3 }, { size: 24, columns: 10 })).toMatchObject({
+      width: 76,
+      height: 24,
+    })
   })
 
   it('draws nothing of nothing', () => {
-    expect(drawBoard({ first: 0 }, { size: 12, columns: 10 })).toMatchObject({ width: 0, height: 0, layers: [] })
+    expect(drawBoard({ first: 0 }, { size: 12, columns: 10 })).toMatchObject({
+      width: 0,
+      height: 0,
+      layers: [],
+    })
   })
 
   it('draws the pieces left over as a cell of their share', () => {
@@ -101,11 +119,15 @@ describe('drawBoard', () => {
 
   it('keeps the area of wasters in proportion to their number, whatever the numbers', () => {
     fc.assert(
-      fc.property(fc.integer({ min: 0, max: 3000 }), fc.integer({ min: 1, max: 400 }), (first, waster) => {
-        const board = drawBoard({ first, waster }, { size: 1000, columns: 20 })
-        const area = areaOf(board.layers.find((layer) => layer.role === 'waster')?.d ?? '')
-        expect(area / 1e6).toBeCloseTo(Math.max(waster / board.perCell, 0.002), 3)
-      }),
+      fc.property(
+        fc.integer({ min: 0, max: 3000 }),
+        fc.integer({ min: 1, max: 400 }),
+        (first, waster) => {
+          const board = drawBoard({ first, waster }, { size: 1000, columns: 20 })
+          const area = areaOf(board.layers.find((layer) => layer.role === 'waster')?.d ?? '')
+          expect(area / 1e6).toBeCloseTo(Math.max(waster / board.perCell, 0.002), 3)
+        },
+      ),
     )
   })
 })
@@ -114,16 +136,23 @@ describe('cells', () => {
   const box = { x: 0, y: 0, size: 24, width: 24 }
 
   it('differ in shape, not in paint alone, between any two outcomes', () => {
-    const shapes = CELL_KINDS.map((kind) => cellShapes({ kind }, box).map((shape) => shape.d).join('|'))
+    const shapes = CELL_KINDS.map((kind) =>
+      cellShapes({ kind }, box)
+        .map((shape) => shape.d)
+        .join('|'),
+    )
     expect(new Set(shapes).size).toBe(CELL_KINDS.length)
   })
 
   it('fill the lower right half of a second', () => {
-    expect(cellShapes({ kind: 'second' }, box).find((shape) => shape.role === 'half')?.d).toBe('M23.5 0.5V23.5H0.5Z')
+    expect(cellShapes({ kind: 'second' }, box).find((shape) => shape.role === 'half')?.d).toBe(
+      'M23.5 0.5V23.5H0.5Z',
+    )
   })
 
   it('crack a waster from edge to edge', () => {
-    const crack = cellShapes({ kind: 'waster' }, box).find((shape) => shape.role === 'crack')?.d ?? ''
+    const crack =
+      cellShapes({ kind: 'waster' }, box).find((shape) => shape.role === 'crack')?.d ?? ''
     expect(crack).toMatch(/^M[\d.]+ 0L.*L[\d.]+ 24$/)
   })
 
@@ -132,13 +161,19 @@ describe('cells', () => {
   })
 
   it('tick a spot-checked sound piece', () => {
-    expect(cellShapes({ kind: 'first', checked: true }, box).map((shape) => shape.role)).toEqual(['sound', 'tick'])
+    expect(cellShapes({ kind: 'first', checked: true }, box).map((shape) => shape.role)).toEqual([
+      'sound',
+      'tick',
+    ])
   })
 
   it('are drawn in the given order', () => {
     const cells: BoardCell[] = [{ kind: 'waster' }, { kind: 'first' }, { kind: 'waster' }]
     const board = drawCells(cells, { size: 48, columns: 7 })
-    expect(board.layers.find((layer) => layer.role === 'waster')?.d.match(/M[\d.]+/g)).toEqual(['M0', 'M100'])
+    expect(board.layers.find((layer) => layer.role === 'waster')?.d.match(/M[\d.]+/g)).toEqual([
+      'M0',
+      'M100',
+    ])
   })
 })
 
@@ -151,15 +186,39 @@ describe('countCells', () => {
       { kind: 'turnedAway' },
     ]
     const counts = countCells(cells)
-    expect(counts).toMatchObject({ first: 2, checked: 1, waster: 1, turnedAway: 1, second: 0, late: { waster: 1 } })
+    expect(counts).toMatchObject({
+      first: 2,
+      checked: 1,
+      waster: 1,
+      turnedAway: 1,
+      second: 0,
+      late: { waster: 1 },
+    })
     expect(boardTotal(counts)).toBe(4)
   })
 })
 
 describe('boardCountsOf', () => {
   it('has all pieces offered on the board', () => {
-    const lot = { ...NO_COUNTS, pieces: 40, turnedAway: 1, seconds: 2, refires: 3, wasters: 4, undecided: 5, notLookedAt: 6 }
-    expect(boardCountsOf(lot)).toEqual({ first: 19, second: 2, refire: 3, waster: 4, undecided: 5, notLookedAt: 6, turnedAway: 1 })
+    const lot = {
+      ...NO_COUNTS,
+      pieces: 40,
+      turnedAway: 1,
+      seconds: 2,
+      refires: 3,
+      wasters: 4,
+      undecided: 5,
+      notLookedAt: 6,
+    }
+    expect(boardCountsOf(lot)).toEqual({
+      first: 19,
+      second: 2,
+      refire: 3,
+      waster: 4,
+      undecided: 5,
+      notLookedAt: 6,
+      turnedAway: 1,
+    })
     expect(boardTotal(boardCountsOf(lot))).toBe(40)
   })
 })
@@ -177,7 +236,9 @@ describe('boardSvg', () => {
   })
 
   it('dashes the outline of pieces turned away, at any size', () => {
-    expect(boardSvg(drawBoard({ first: 0, turnedAway: 1 }, { size: 48, columns: 7 }), 48, '')).toContain(`stroke-dasharray="${dashOf(48)}"`)
+    expect(
+      boardSvg(drawBoard({ first: 0, turnedAway: 1 }, { size: 48, columns: 7 }), 48, ''),
+    ).toContain(`stroke-dasharray="${dashOf(48)}"`)
     expect([12, 24, 48].map(dashOf)).toEqual(['2 2', '4 4', '8 8'])
   })
 
@@ -185,5 +246,11 @@ describe('boardSvg', () => {
     expect(lineWidth('crack', 12)).toBe(1.25)
     expect(lineWidth('crack', 48)).toBe(3.84)
     expect(lineWidth('waster', 48)).toBe(0)
+  })
+})
+
+describe('favicon.svg', () => {
+  it('is three cells of the board, the last one cracked', () => {
+    expect(readFileSync('src/public/favicon.svg', 'utf8')).toBe(`${faviconSvg()}\n`)
   })
 })
