@@ -1,0 +1,270 @@
+import { testStrata, type StrataRows, type TestScores, type WithinStrata } from '../statistics/strata.js'
+import type { Panel } from './atRisk.js'
+import { exactPValue } from './exactPValue.js'
+import { codeAt, exposure, type FactorView } from './factorView.js'
+import type { LevelTotals } from './levelTotals.js'
+import { seedOf } from './randomNumbers.js'
+import type { StratumLevels } from './stratumLevels.js'
+import type { Comparison, ComparisonKind } from './types.js'
+
+/** What a comparison must have before it is made. */
+const LEAST_INFORMATIVE = 8
+const LEAST_UNITS = 50
+const LEAST_EVENTS = 5
+/** A side of one firing can never be told from that firing. */
+const LEAST_FIRINGS_A_SIDE = 2
+/** The exact p is found where the normal one is below this ... */
+const WORTH_DEALING = 0.05
+/** ... and could be off: few events, or a skewed statistic. */
+const FEW_EVENTS = 100
+const SKEWED = 0.1
+
+export interface ScreenInput {
+  fault: string
+  panel: Panel
+  view: FactorView
+  totals: LevelTotals
+  sums: StratumLevels
+  /** By row of the panel. */
+  events: Float64Array
+  /** Strata with events. */
+  touched: Int32Array
+  comparison: ComparisonKind
+  /** These levels alone. */
+  only?: ReadonlySet<number> | undefined
+  /** What the mix of lots leads one to expect, by row, up to a constant for a stratum. */
+  expected?: Float64Array | undefined
+  level: number
+  seed: number
+  scratch: Scratch
+}
+
+/** Arrays that are filled anew for every comparison; as long as the longest panel. */
+export interface Scratch {
+  starts: Int32Array
+  units: Float64Array
+  events: Float64Array
+  exposed: Uint8Array
+  represents: Float64Array
+  explained: Float64Array
+}
+
+/** Scratch for panels of up to `rows` rows. */
+export function makeScratch(rows: number): Scratch {
+  return {
+    starts: new Int32Array(rows + 1),
+    units: new Float64Array(rows),
+    events: new Float64Array(rows),
+    exposed: new Uint8Array(rows),
+    represents: new Float64Array(rows),
+    explained: new Float64Array(rows),
+  }
+}
+
+interface Candidate {
+  level: number
+  strata: number[]
+  exposedEvents: number
+  unexposedEvents: number
+}
+
+interface Tested extends Candidate {
+  result: WithinStrata
+  scores: TestScores | null
+  informativeFirings: number
+}
+
+/** The comparisons of one fault and factor, and the levels that too few firings held beside others. */
+export interface Screened {
+  comparisons: Comparison[]
+  /** Levels under the least number of informative firings. */
+  hardlyMixed: number[]
+}
+
+/**
+ * Every level of a factor against all other recorded levels, inside strata, for one fault. Work is proportional to
+ * the rows of strata with events times the levels met in them, whatever the number of levels of the factor.
+ */
+export function screenFactor(input: ScreenInput): Screened {
+  const candidates = candidatesOf(input)
+  const eligible: Candidate[] = []
+  const hardlyMixed: number[] = []
+  for (const candidate of candidates) {
+    const few = input.comparison === 'within-firings' && candidate.strata.length < LEAST_INFORMATIVE
+    if (few) hardlyMixed.push(candidate.level)
+    else if (isEligible(input.totals, candidate)) eligible.push(candidate)
+  }
+  const tested: Tested[] = []
+  for (const candidate of eligible) {
+    const within = input.comparison === 'within-firings'
+    const { result, scores } = testStrata(gather(input, candidate), input.level, within ? 'stratum' : 'row')
+    const informative = informativeFirings(input, candidate, result)
+    if (informative >= LEAST_INFORMATIVE) tested.push({ ...candidate, result, scores, informativeFirings: informative })
+    else if (within) hardlyMixed.push(candidate.level)
+  }
+  return { comparisons: onceEach(input.totals, tested).map((one) => comparisonOf(input, one)), hardlyMixed }
+}
+
+/** Levels met in strata with events, each with the strata where it was mixed with others. */
+function candidatesOf({ panel, sums, events, touched, only }: ScreenInput): Candidate[] {
+  const byLevel = new Map<number, Candidate>()
+  for (let t = 0; t < touched.length; t += 1) {
+    const g = touched[t] as number
+    sums.collect(panel, g, events)
+    if (sums.total === 0) continue
+    for (let k = 0; k < sums.count; k += 1) {
+      const level = sums.levels[k] as number
+      if (!sums.isMixed(level) || (only !== undefined && !only.has(level))) continue
+      const exposedEvents = sums.exposed(level)
+      const unexposedEvents = sums.unexposed(level)
+      if (exposedEvents + unexposedEvents === 0) continue
+      let candidate = byLevel.get(level)
+      if (candidate === undefined) {
+        candidate = { level, strata: [], exposedEvents: 0, unexposedEvents: 0 }
+        byLevel.set(level, candidate)
+      }
+      candidate.strata.push(g)
+      candidate.exposedEvents += exposedEvents
+      candidate.unexposedEvents += unexposedEvents
+    }
+  }
+  return [...byLevel.values()].sort((a, b) => a.level - b.level)
+}
+
+function isEligible(totals: LevelTotals, { level, exposedEvents, unexposedEvents }: Candidate): boolean {
+  return (
+    (totals.exposedUnits[level] as number) >= LEAST_UNITS &&
+    (totals.unexposedUnits[level] as number) >= LEAST_UNITS &&
+    exposedEvents + unexposedEvents >= LEAST_EVENTS
+  )
+}
+
+/** Lots: firings are the strata. Firings: the rows of informative strata, if both sides have more than one. */
+function informativeFirings({ comparison, scratch }: ScreenInput, { strata }: Candidate, result: WithinStrata): number {
+  if (comparison === 'within-firings') return result.informativeStrata
+  const rows = scratch.starts[strata.length] as number
+  let exposed = 0
+  for (let i = 0; i < rows; i += 1) exposed += scratch.exposed[i] as number
+  return Math.min(exposed, rows - exposed) < LEAST_FIRINGS_A_SIDE ? 0 : rows
+}
+
+/** Copies the recorded rows of the candidate's strata into the scratch arrays. */
+function gather({ panel, view, events, expected, scratch }: ScreenInput, { level, strata }: Candidate): StrataRows {
+  const { units, exposed, represents, starts } = scratch
+  const standsFor = expected ?? panel.represents
+  let next = 0
+  for (let place = 0; place < strata.length; place += 1) {
+    const g = strata[place] as number
+    const from = next
+    for (let i = panel.starts[g] as number; i < (panel.starts[g + 1] as number); i += 1) {
+      const code = codeAt(view, i)
+      if (code === 0) continue
+      const side = exposure(view, code, level)
+      if (side === -1) continue
+      units[next] = panel.units[i] as number
+      scratch.events[next] = events[i] as number
+      exposed[next] = side
+      if (standsFor !== null) represents[next] = standsFor[i] as number
+      next += 1
+    }
+    if (expected !== undefined) explain(scratch, from, next)
+    starts[place + 1] = next
+  }
+  return {
+    strata: strata.length,
+    starts,
+    units,
+    events: scratch.events,
+    exposed,
+    represents: standsFor === null ? undefined : represents,
+    explained: expected === undefined ? undefined : scratch.explained,
+  }
+}
+
+/**
+ * Scales the expectations of a stratum to its pieces, and takes as explained what they shift between its rows:
+ * Y·(E/ΣE − m/M). Both add up to what they should, so that nothing but the mix is taken away.
+ */
+function explain({ represents, explained, units, events }: Scratch, from: number, to: number): void {
+  let E = 0
+  let M = 0
+  let Y = 0
+  for (let i = from; i < to; i += 1) {
+    E += represents[i] as number
+    M += units[i] as number
+    Y += events[i] as number
+  }
+  for (let i = from; i < to; i += 1) {
+    const share = E > 0 ? (represents[i] as number) / E : (units[i] as number) / M
+    explained[i] = Y * (share - (units[i] as number) / M)
+    represents[i] = M * share
+  }
+}
+
+/**
+ * Two levels that divide the same pieces between them are one comparison told from both ends (always so for a factor
+ * of two levels): the raised end stays. It is chosen by the ratio, so the choice does not favour small p.
+ */
+function onceEach(totals: LevelTotals, tested: readonly Tested[]): Tested[] {
+  const kept: Tested[] = []
+  for (const one of tested) {
+    const twin = kept.findIndex((other) => isMirror(totals, one, other))
+    if (twin < 0) kept.push(one)
+    else if (isRaised(one) && !isRaised(kept[twin] as Tested)) kept[twin] = one
+  }
+  return kept
+}
+
+function isRaised({ result }: Tested): boolean {
+  return result.ratio === null || result.ratio > 1
+}
+
+function isMirror(totals: LevelTotals, a: Tested, b: Tested): boolean {
+  return (
+    totals.mixedStrata[a.level] === totals.mixedStrata[b.level] &&
+    a.exposedEvents === b.unexposedEvents &&
+    a.unexposedEvents === b.exposedEvents &&
+    close(totals.exposedUnits[a.level] as number, totals.unexposedUnits[b.level] as number) &&
+    close(totals.unexposedUnits[a.level] as number, totals.exposedUnits[b.level] as number) &&
+    a.strata.length === b.strata.length &&
+    a.strata.every((g, i) => g === b.strata[i])
+  )
+}
+
+function close(a: number, b: number): boolean {
+  return Math.abs(a - b) <= 1e-9 * Math.max(a, b)
+}
+
+function comparisonOf(input: ScreenInput, one: Tested): Comparison {
+  const { view, totals } = input
+  const { level, result } = one
+  return {
+    fault: input.fault,
+    factors: view.factors,
+    levels: view.keys(level),
+    comparison: input.comparison,
+    ratio: result.ratio,
+    lower: result.lower,
+    upper: result.upper,
+    statistic: result.statistic,
+    ...pValueOf(input, one),
+    direction: isRaised(one) ? 'raised' : 'lowered',
+    exposedUnits: totals.exposedUnits[level] as number,
+    exposedEvents: one.exposedEvents,
+    unexposedUnits: totals.unexposedUnits[level] as number,
+    unexposedEvents: one.unexposedEvents,
+    mixedStrata: totals.mixedStrata[level] as number,
+    informativeFirings: one.informativeFirings,
+  }
+}
+
+/** The normal p, or the exact one where they could differ and it could matter. */
+function pValueOf(input: ScreenInput, one: Tested): Pick<Comparison, 'pValue' | 'method'> {
+  const { result, scores } = one
+  const pValue = result.pValue ?? 1
+  const few = one.exposedEvents + one.unexposedEvents < FEW_EVENTS
+  if (result.statistic === null || scores === null || pValue >= WORTH_DEALING) return { pValue, method: 'normal' }
+  if (!few && Math.abs(scores.skewness) <= SKEWED) return { pValue, method: 'normal' }
+  const seed = seedOf(input.seed, input.fault, input.comparison, ...input.view.factors, ...input.view.keys(one.level))
+  return exactPValue(gather(input, one), scores, result.statistic, seed)
+}
