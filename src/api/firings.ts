@@ -28,8 +28,7 @@ export function firingsTotalQuery(network: string, filters: Partial<FiringsFilte
 
 /** The list as a file, whole, whatever page is shown. */
 export function firingsCsvHref(network: string, filters: FiringsFilters): string {
-  const { page: _page, pageSize: _pageSize, ...rest } = filters
-  return withQuery(fill(PATHS.firingsCsv, { network }), rest)
+  return withQuery(fill(PATHS.firingsCsv, { network }), { ...filters, page: undefined, pageSize: undefined })
 }
 
 /** One firing whole: lots, losses, revisions. */

@@ -59,21 +59,47 @@ export function lotFactors(kind: FiringKind): readonly Factor[] {
   return LOT_FACTORS.filter((factor) => applies(factor, kind))
 }
 
-export const applies = (factor: Factor, kind: FiringKind): boolean => !(factor.applies === 'glaze' && kind === 'bisque')
+export const applies = (factor: Factor, kind: FiringKind): boolean =>
+  !(factor.applies === 'glaze' && kind === 'bisque')
 
 /** Factors of the firing that have no field of their own. */
-export const OTHER_FIRING_FACTORS = FIRING_FACTORS.filter(({ id }) => !['kiln', 'programme', 'opening_temperature'].includes(id))
+export const OTHER_FIRING_FACTORS = FIRING_FACTORS.filter(
+  ({ id }) => !['kiln', 'programme', 'opening_temperature'].includes(id),
+)
 
 export function emptyPack(makeUid: MakeUid): PackDraft {
   return {
-    v: 1, firing: makeUid(), revision: makeUid(), base: 0, deviceTime: null,
-    kiln: null, kind: 'glaze', programme: null, cone: null, localDate: null, kilnNumber: null,
-    pieces: null, about: false, levels: {}, note: '', rest: makeUid(), lots: [], turnedAway: [],
+    v: 1,
+    firing: makeUid(),
+    revision: makeUid(),
+    base: 0,
+    deviceTime: null,
+    kiln: null,
+    kind: 'glaze',
+    programme: null,
+    cone: null,
+    localDate: null,
+    kilnNumber: null,
+    pieces: null,
+    about: false,
+    levels: {},
+    note: '',
+    rest: makeUid(),
+    lots: [],
+    turnedAway: [],
   }
 }
 
 export function emptyLot(makeUid: MakeUid): PackLot {
-  return { uid: makeUid(), pieces: null, levels: {}, glazeOverlap: null, refireCount: 0, maker: '', note: '' }
+  return {
+    uid: makeUid(),
+    pieces: null,
+    levels: {},
+    glazeOverlap: null,
+    refireCount: 0,
+    maker: '',
+    note: '',
+  }
 }
 
 /** The same lot once more, as a lot of its own. */
@@ -102,7 +128,9 @@ export function packOf(firing: FiringDetail, makeUid: MakeUid): PackDraft {
     rest: firing.rest,
     lots: lots.map((lot) => packLotOf(lot, lot.uid)),
     turnedAway: firing.lots.flatMap((lot) =>
-      lot.losses.filter(({ outcome }) => outcome === 'turned-away').map(({ uid, fault, pieces }) => ({ uid, lot: lot.uid, fault, pieces })),
+      lot.losses
+        .filter(({ outcome }) => outcome === 'turned-away')
+        .map(({ uid, fault, pieces }) => ({ uid, lot: lot.uid, fault, pieces })),
     ),
   }
 }
@@ -116,13 +144,19 @@ export function asLastTime(draft: PackDraft, last: FiringDetail, makeUid: MakeUi
     pieces: last.pieces,
     about: last.about,
     levels: firingLevels(last),
-    lots: last.lots.filter((lot) => !lot.isRest).map((lot) => ({ ...packLotOf(lot, makeUid()), refireCount: 0, maker: '', note: '' })),
+    lots: last.lots
+      .filter((lot) => !lot.isRest)
+      .map((lot) => ({ ...packLotOf(lot, makeUid()), refireCount: 0, maker: '', note: '' })),
     turnedAway: [],
   }
 }
 
 function firingLevels(firing: FiringDetail): Record<string, string | null> {
-  return Object.fromEntries(OTHER_FIRING_FACTORS.flatMap(({ id }) => (firing.levels[id] ? [[id, firing.levels[id].uid]] : [])))
+  return Object.fromEntries(
+    OTHER_FIRING_FACTORS.flatMap(({ id }) =>
+      firing.levels[id] ? [[id, firing.levels[id].uid]] : [],
+    ),
+  )
 }
 
 function packLotOf(lot: LotView, uid: string): PackLot {
@@ -131,8 +165,13 @@ function packLotOf(lot: LotView, uid: string): PackLot {
     return uids.length > 0 ? [[id, several ? uids : (uids[0] ?? null)] as const] : []
   })
   return {
-    uid, pieces: lot.pieces, levels: Object.fromEntries(levels), glazeOverlap: lot.glazeOverlap,
-    refireCount: lot.refireCount, maker: lot.maker ?? '', note: lot.note ?? '',
+    uid,
+    pieces: lot.pieces,
+    levels: Object.fromEntries(levels),
+    glazeOverlap: lot.glazeOverlap,
+    refireCount: lot.refireCount,
+    maker: lot.maker ?? '',
+    note: lot.note ?? '',
   }
 }
 
@@ -142,19 +181,26 @@ export function chosen(lot: Pick<PackLot, 'levels'>, factor: string): string[] {
   return value === null || value === undefined ? [] : Array.isArray(value) ? value : [value]
 }
 
-export const inLots = (draft: PackDraft): number => draft.lots.reduce((sum, lot) => sum + (lot.pieces ?? 0), 0)
+export const inLots = (draft: PackDraft): number =>
+  draft.lots.reduce((sum, lot) => sum + (lot.pieces ?? 0), 0)
 
 /** Pieces of the load that are in no lot; below nought when the lots hold too many. */
 export const restOf = (draft: PackDraft): number => (draft.pieces ?? 0) - inLots(draft)
 
 export const turnedAwayOf = (draft: PackDraft, lot?: string): number =>
-  draft.turnedAway.reduce((sum, away) => (lot === undefined || away.lot === lot ? sum + (away.pieces ?? 0) : sum), 0)
+  draft.turnedAway.reduce(
+    (sum, away) => (lot === undefined || away.lot === lot ? sum + (away.pieces ?? 0) : sum),
+    0,
+  )
 
 /** Of the load's pieces, those for which each factor is recorded; factors that the kind cannot have are missing. */
 export function recordedIn(draft: PackDraft): { factor: string; pieces: number }[] {
   return lotFactors(draft.kind).map(({ id }) => ({
     factor: id,
-    pieces: draft.lots.reduce((sum, lot) => (chosen(lot, id).length > 0 ? sum + (lot.pieces ?? 0) : sum), 0),
+    pieces: draft.lots.reduce(
+      (sum, lot) => (chosen(lot, id).length > 0 ? sum + (lot.pieces ?? 0) : sum),
+      0,
+    ),
   }))
 }
 
@@ -164,9 +210,12 @@ export function packProblems(draft: PackDraft): Record<string, string> {
   if (draft.kiln === null) problems.kiln = 'Which kiln?'
   if (draft.localDate === null) problems.localDate = 'Which day?'
   if (draft.pieces === null) problems.pieces = 'How many pieces in all? About is fine.'
-  else if (restOf(draft) < 0) problems.pieces = `The lots hold ${formatCount(inLots(draft))}, more than ${plural(draft.pieces, 'piece')}.`
-  for (const [index, lot] of draft.lots.entries()) if (lot.pieces === null) problems[`lots.${index}.pieces`] = 'How many pieces?'
-  for (const [index, away] of draft.turnedAway.entries()) Object.assign(problems, awayProblems(draft, away, index))
+  else if (restOf(draft) < 0)
+    problems.pieces = `The lots hold ${formatCount(inLots(draft))}, more than ${plural(draft.pieces, 'piece')}.`
+  for (const [index, lot] of draft.lots.entries())
+    if (lot.pieces === null) problems[`lots.${index}.pieces`] = 'How many pieces?'
+  for (const [index, away] of draft.turnedAway.entries())
+    Object.assign(problems, awayProblems(draft, away, index))
   return problems
 }
 
@@ -174,9 +223,11 @@ function awayProblems(draft: PackDraft, away: PackAway, index: number): Record<s
   const problems: Record<string, string> = {}
   const lot = draft.lots.find(({ uid }) => uid === away.lot)
   const there = lot ? (lot.pieces ?? 0) : Math.max(0, restOf(draft))
-  if (away.fault === null) problems[`turnedAway.${index}.fault`] = 'What did you see? Not named is fine.'
+  if (away.fault === null)
+    problems[`turnedAway.${index}.fault`] = 'What did you see? Not named is fine.'
   if (away.pieces === null) problems[`turnedAway.${index}.pieces`] = 'How many?'
-  else if (turnedAwayOf(draft, away.lot) > there) problems[`turnedAway.${index}.pieces`] = `There are only ${plural(there, 'piece')} there.`
+  else if (turnedAwayOf(draft, away.lot) > there)
+    problems[`turnedAway.${index}.pieces`] = `There are only ${plural(there, 'piece')} there.`
   return problems
 }
 
@@ -187,31 +238,62 @@ export function packBodyOf(draft: PackDraft): PackBody {
     ...lot,
     pieces: pieces ?? 0,
     refireCount: refireCount ?? 0,
-    levels: Object.fromEntries(factors.flatMap(({ id }) => (chosen(lot, id).length > 0 ? [[id, lot.levels[id] ?? null] as const] : []))),
-    glazeOverlap: chosen(lot, 'glaze').length > 1 && draft.kind !== 'bisque' ? lot.glazeOverlap : null,
+    levels: Object.fromEntries(
+      factors.flatMap(({ id }) =>
+        chosen(lot, id).length > 0 ? [[id, lot.levels[id] ?? null] as const] : [],
+      ),
+    ),
+    glazeOverlap:
+      chosen(lot, 'glaze').length > 1 && draft.kind !== 'bisque' ? lot.glazeOverlap : null,
     maker: maker.trim() || null,
     note: note.trim() || null,
   }))
   return {
-    kiln: draft.kiln ?? '', kind: draft.kind, programme: draft.programme, cone: draft.cone as PackBody['cone'], localDate: draft.localDate ?? '',
-    kilnNumber: draft.kilnNumber, pieces: draft.pieces ?? 0, about: draft.about,
+    kiln: draft.kiln ?? '',
+    kind: draft.kind,
+    programme: draft.programme,
+    cone: draft.cone as PackBody['cone'],
+    localDate: draft.localDate ?? '',
+    kilnNumber: draft.kilnNumber,
+    pieces: draft.pieces ?? 0,
+    about: draft.about,
     levels: Object.fromEntries(Object.entries(draft.levels).filter(([, uid]) => uid !== null)),
-    note: draft.note.trim() || null, rest: draft.rest, lots,
-    turnedAway: draft.turnedAway.map((away) => ({ ...away, fault: away.fault ?? '', pieces: away.pieces ?? 0 })),
+    note: draft.note.trim() || null,
+    rest: draft.rest,
+    lots,
+    turnedAway: draft.turnedAway.map((away) => ({
+      ...away,
+      fault: away.fault ?? '',
+      pieces: away.pieces ?? 0,
+    })),
   }
 }
 
 /** A load that holds more than what every draft starts with. */
-export const isBegun = (draft: PackDraft): boolean => draft.pieces !== null || draft.lots.length > 0 || draft.note !== '' || draft.turnedAway.length > 0
+export const isBegun = (draft: PackDraft): boolean =>
+  draft.pieces !== null || draft.lots.length > 0 || draft.note !== '' || draft.turnedAway.length > 0
 
 /** Levels to choose from: the studio's own and the common ones, none that is archived. `now` keeps a level that is chosen already. */
-export function levelsFor(catalogue: Catalogue, factor: string, studio: string | null, now: readonly string[] = []): CatalogueLevel[] {
-  const open = (level: CatalogueLevel): boolean => !level.archived && (level.studio === null || level.studio === studio)
-  return catalogue.levels.filter((level) => level.factor === factor && (open(level) || now.includes(level.uid)))
+export function levelsFor(
+  catalogue: Catalogue,
+  factor: string,
+  studio: string | null,
+  now: readonly string[] = [],
+): CatalogueLevel[] {
+  const open = (level: CatalogueLevel): boolean =>
+    !level.archived && (level.studio === null || level.studio === studio)
+  return catalogue.levels.filter(
+    (level) => level.factor === factor && (open(level) || now.includes(level.uid)),
+  )
 }
 
 /** The level of a class that says how long its makers have been at it, or null. */
 export function classLevelOf(catalogue: Catalogue, classUid: string | null): string | null {
   const code = catalogue.levels.find((level) => level.uid === classUid)?.attributes.classLevel
-  return (code && catalogue.levels.find((level) => level.factor === 'class_level' && level.code === code)?.uid) ?? null
+  return (
+    (code &&
+      catalogue.levels.find((level) => level.factor === 'class_level' && level.code === code)
+        ?.uid) ??
+    null
+  )
 }

@@ -2,7 +2,12 @@
  * A report while it is being made at the kiln: pure. A lot of up to 60 pieces is a board of cells, each
  * marked or sound; a larger one is counted fault by fault. Never more marked than there were.
  */
-import type { FiringDetail, LossView, LotView, ReportBody } from '../../../server/contract/firings.js'
+import type {
+  FiringDetail,
+  LossView,
+  LotView,
+  ReportBody,
+} from '../../../server/contract/firings.js'
 import type { FailedOutcome, LotCounts } from '../../../server/shared/counts.js'
 import { addCounts, FAILED_OUTCOMES, fired, NO_COUNTS } from '../../../server/shared/counts.js'
 import type { BoardCell } from '../../../server/shared/wareBoard.js'
@@ -60,7 +65,13 @@ export interface ReportDraft {
 /** Lots above this are counted instead of touched. */
 export const isCounted = (lot: Pick<LotDraft, 'fired'>): boolean => lot.fired > MOST_CELLS
 
-export const markOf = (fault: string, outcome: FailedOutcome, neighbour = false): Mark => ({ fault, outcome, also: [], neighbour, features: {} })
+export const markOf = (fault: string, outcome: FailedOutcome, neighbour = false): Mark => ({
+  fault,
+  outcome,
+  also: [],
+  neighbour,
+  features: {},
+})
 
 /** Two marks that say the same of a piece. */
 export function sameMark(a: Mark, b: Mark): boolean {
@@ -68,13 +79,21 @@ export function sameMark(a: Mark, b: Mark): boolean {
 }
 
 function markKey({ fault, outcome, also, neighbour, features }: Mark): string {
-  return [fault, outcome, neighbour ? 'neighbour' : '', [...also].sort().join('+'), JSON.stringify(features)].join('|')
+  return [
+    fault,
+    outcome,
+    neighbour ? 'neighbour' : '',
+    [...also].sort().join('+'),
+    JSON.stringify(features),
+  ].join('|')
 }
 
-export const marked = (lot: LotDraft): number => lot.entries.reduce((sum, entry) => sum + entry.pieces, 0)
+export const marked = (lot: LotDraft): number =>
+  lot.entries.reduce((sum, entry) => sum + entry.pieces, 0)
 
 /** Pieces of which nothing is said yet or which are sound. */
-export const soundIn = (lot: LotDraft): number => Math.max(0, lot.fired - marked(lot) - lot.notLookedAt)
+export const soundIn = (lot: LotDraft): number =>
+  Math.max(0, lot.fired - marked(lot) - lot.notLookedAt)
 
 /** A new report of a packed firing, or an amendment that starts from what was reported. */
 export function draftOf(firing: FiringDetail, revision: string): ReportDraft {
@@ -91,17 +110,28 @@ export function draftOf(firing: FiringDetail, revision: string): ReportDraft {
     openedAt: firing.openedAt,
     note: reported ? (firing.note ?? '') : '',
     reason: '',
-    lossUids: Object.fromEntries(firing.lots.flatMap((lot) => failuresOf(lot).map((loss) => [`${lot.uid}|${markKey(markOfLoss(loss))}`, loss.uid]))),
+    lossUids: Object.fromEntries(
+      firing.lots.flatMap((lot) =>
+        failuresOf(lot).map((loss) => [`${lot.uid}|${markKey(markOfLoss(loss))}`, loss.uid]),
+      ),
+    ),
   }
 }
 
 function lotDraftOf(lot: LotView, reported: boolean): LotDraft {
   const groups = failuresOf(lot).map((loss) => ({ mark: markOfLoss(loss), pieces: loss.pieces }))
-  const empty: LotDraft = { lot: lot.uid, fired: fired(lot), said: reported, notLookedAt: lot.notLookedAt, entries: [] }
+  const empty: LotDraft = {
+    lot: lot.uid,
+    fired: fired(lot),
+    said: reported,
+    notLookedAt: lot.notLookedAt,
+    entries: [],
+  }
   return { ...empty, entries: place(empty, groups) }
 }
 
-const failuresOf = (lot: LotView): LossView[] => lot.losses.filter((loss) => loss.outcome !== 'turned-away')
+const failuresOf = (lot: LotView): LossView[] =>
+  lot.losses.filter((loss) => loss.outcome !== 'turned-away')
 
 const markOfLoss = (loss: LossView): Mark => ({
   fault: loss.fault,
@@ -114,8 +144,12 @@ const markOfLoss = (loss: LossView): Mark => ({
 /** Counted groups as entries: on a board after the sound pieces, in the order of the outcomes. */
 function place(lot: LotDraft, groups: { mark: Mark; pieces: number }[]): Entry[] {
   if (isCounted(lot)) return groups.map(({ mark, pieces }) => ({ mark, at: null, pieces }))
-  const inOrder = FAILED_OUTCOMES.flatMap((outcome) => groups.filter(({ mark }) => mark.outcome === outcome))
-  const cells = inOrder.flatMap(({ mark, pieces }) => Array.from({ length: pieces }, () => mark)).slice(0, lot.fired)
+  const inOrder = FAILED_OUTCOMES.flatMap((outcome) =>
+    groups.filter(({ mark }) => mark.outcome === outcome),
+  )
+  const cells = inOrder
+    .flatMap(({ mark, pieces }) => Array.from({ length: pieces }, () => mark))
+    .slice(0, lot.fired)
   const from = Math.max(0, lot.fired - lot.notLookedAt - cells.length)
   return cells.map((mark, index) => ({ mark, at: from + index, pieces: 1 }))
 }
@@ -140,7 +174,9 @@ export function cellsOf(lot: LotDraft): (BoardCell & { note?: string })[] {
 export function markInWords(mark: Mark): string {
   const name = (id: string): string => faultNode(id)?.short ?? id
   const also = mark.also.map(name).join(', ').toLowerCase()
-  return [name(mark.fault), also && `also ${also}`, mark.neighbour && 'a neighbour did it'].filter(Boolean).join(', ')
+  return [name(mark.fault), also && `also ${also}`, mark.neighbour && 'a neighbour did it']
+    .filter(Boolean)
+    .join(', ')
 }
 
 /** A touch of a cell: it takes the mark in hand; touched again with the same, it is sound again. */
@@ -165,7 +201,9 @@ export function count(lot: LotDraft, mark: Mark, by: number): LotDraft {
 
 /** Exactly so many pieces of a counted lot with this mark; 0 takes it away. */
 export function setCount(lot: LotDraft, mark: Mark, pieces: number): LotDraft {
-  const room = lot.fired - marked({ ...lot, entries: lot.entries.filter((entry) => !sameMark(entry.mark, mark)) })
+  const room =
+    lot.fired -
+    marked({ ...lot, entries: lot.entries.filter((entry) => !sameMark(entry.mark, mark)) })
   const n = Math.min(room, Math.max(0, Math.round(pieces)))
   const known = lot.entries.some((entry) => sameMark(entry.mark, mark))
   const entries = known
@@ -176,7 +214,11 @@ export function setCount(lot: LotDraft, mark: Mark, pieces: number): LotDraft {
 
 /** Collected before anyone could look. */
 export function setNotLookedAt(lot: LotDraft, pieces: number): LotDraft {
-  return { ...lot, notLookedAt: Math.min(lot.fired - marked(lot), Math.max(0, Math.round(pieces))), said: true }
+  return {
+    ...lot,
+    notLookedAt: Math.min(lot.fired - marked(lot), Math.max(0, Math.round(pieces))),
+    said: true,
+  }
 }
 
 /** Marked pieces were looked at: the others give way. */
@@ -185,8 +227,13 @@ function fit(lot: LotDraft): LotDraft {
 }
 
 /** Lots of which nothing was said are sound (or not looked at). */
-export function sayOfTheOthers(lots: readonly LotDraft[], what: 'sound' | 'not-looked-at'): LotDraft[] {
-  return lots.map((lot) => (lot.said ? lot : { ...lot, said: true, notLookedAt: what === 'sound' ? 0 : lot.fired }))
+export function sayOfTheOthers(
+  lots: readonly LotDraft[],
+  what: 'sound' | 'not-looked-at',
+): LotDraft[] {
+  return lots.map((lot) =>
+    lot.said ? lot : { ...lot, said: true, notLookedAt: what === 'sound' ? 0 : lot.fired },
+  )
 }
 
 /** Every piece of the load gets the mark: the whole load failed. */
@@ -198,9 +245,15 @@ export function markAll(lots: readonly LotDraft[], mark: Mark): LotDraft[] {
 }
 
 /** Lots with pieces of which nothing was said. */
-export const unsaid = (lots: readonly LotDraft[]): LotDraft[] => lots.filter((lot) => !lot.said && lot.fired > 0)
+export const unsaid = (lots: readonly LotDraft[]): LotDraft[] =>
+  lots.filter((lot) => !lot.said && lot.fired > 0)
 
-const COUNTED_AS = { second: 'seconds', refire: 'refires', waster: 'wasters', undecided: 'undecided' } as const
+const COUNTED_AS = {
+  second: 'seconds',
+  refire: 'refires',
+  waster: 'wasters',
+  undecided: 'undecided',
+} as const
 
 /** Counts of what the draft says of a lot; `pieces` are those fired. */
 export function countsOf(lot: LotDraft): LotCounts {
@@ -216,12 +269,16 @@ export function totalOf(lots: readonly LotDraft[]): LotCounts {
 /** Faults in the draft, the most frequent first. */
 export function faultsOf(lots: readonly LotDraft[]): string[] {
   const pieces = new Map<string, number>()
-  for (const { mark, pieces: n } of lots.flatMap((lot) => lot.entries)) pieces.set(mark.fault, (pieces.get(mark.fault) ?? 0) + n)
+  for (const { mark, pieces: n } of lots.flatMap((lot) => lot.entries))
+    pieces.set(mark.fault, (pieces.get(mark.fault) ?? 0) + n)
   return [...pieces].sort((a, b) => b[1] - a[1]).map(([fault]) => fault)
 }
 
 /** The body to send, and the uids of its losses, to be kept with the draft. */
-export function reportBodyOf(draft: ReportDraft, makeUid: () => string): { report: ReportBody; lossUids: Record<string, string> } {
+export function reportBodyOf(
+  draft: ReportDraft,
+  makeUid: () => string,
+): { report: ReportBody; lossUids: Record<string, string> } {
   const lossUids = { ...draft.lossUids }
   const lots = draft.lots.map((lot) => {
     const groups = new Map<string, { mark: Mark; pieces: number }>()
@@ -229,11 +286,24 @@ export function reportBodyOf(draft: ReportDraft, makeUid: () => string): { repor
       const key = `${lot.lot}|${markKey(mark)}`
       groups.set(key, { mark, pieces: (groups.get(key)?.pieces ?? 0) + pieces })
     }
-    const losses = [...groups].map(([key, { mark, pieces }]) => ({ uid: (lossUids[key] ??= makeUid()), ...mark, pieces }))
+    const losses = [...groups].map(([key, { mark, pieces }]) => ({
+      uid: (lossUids[key] ??= makeUid()),
+      ...mark,
+      pieces,
+    }))
     return { lot: lot.lot, notLookedAt: lot.notLookedAt, losses }
   })
   const { openedAt, openingTemperatureC, wholeLoadFailed } = draft
-  return { report: { openedAt, openingTemperatureC, wholeLoadFailed, lots, note: draft.note.trim() || null }, lossUids }
+  return {
+    report: {
+      openedAt,
+      openingTemperatureC,
+      wholeLoadFailed,
+      lots,
+      note: draft.note.trim() || null,
+    },
+    lossUids,
+  }
 }
 
 /**
@@ -258,7 +328,12 @@ export function rebase(draft: ReportDraft, firing: FiringDetail, revision: strin
 function refit(mine: LotDraft | undefined, now: LotDraft): LotDraft {
   if (!mine?.said) return now
   if (mine.fired === now.fired) return mine
-  const empty: LotDraft = { ...now, said: true, notLookedAt: Math.min(mine.notLookedAt, now.fired), entries: [] }
+  const empty: LotDraft = {
+    ...now,
+    said: true,
+    notLookedAt: Math.min(mine.notLookedAt, now.fired),
+    entries: [],
+  }
   let room = now.fired
   const groups = mine.entries.flatMap(({ mark, pieces }) => {
     const n = Math.min(room, pieces)
