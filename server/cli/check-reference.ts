@@ -44,7 +44,10 @@ function read(folder: string): Listed[] | null {
   const results: Listed[] = []
   for (const file of names) {
     try {
-      results.push({ file, ...checkReference(JSON.parse(readFileSync(join(folder, file), 'utf8'))) })
+      results.push({
+        file,
+        ...checkReference(JSON.parse(readFileSync(join(folder, file), 'utf8'))),
+      })
     } catch (error) {
       console.error(`Cannot read ${file}: ${(error as Error).message}`)
       return null
@@ -70,9 +73,13 @@ function print(results: readonly Listed[]): void {
   }
   const cases = results.flatMap((result) => result.cases)
   const passed = cases.filter((one) => one.passes).length
-  const missing = results.filter((result) => result.status === 'missing').map((result) => result.method)
+  const missing = results
+    .filter((result) => result.status === 'missing')
+    .map((result) => result.method)
   if (missing.length > 0) console.log(`Missing: ${missing.join(', ')}`)
-  console.log(`${passed} passed, ${cases.length - passed} failed, ${missing.length} methods missing`)
+  console.log(
+    `${passed} passed, ${cases.length - passed} failed, ${missing.length} methods missing`,
+  )
 }
 
 process.exitCode = main(process.argv.slice(2))

@@ -13,12 +13,14 @@ export interface Counts {
 
 /** A confidence level or probability strictly between 0 and 1. */
 export function requireProbability(name: string, value: number): void {
-  if (!(value > 0 && value < 1)) throw new RangeError(`${name} must lie between 0 and 1, not ${value}`)
+  if (!(value > 0 && value < 1))
+    throw new RangeError(`${name} must lie between 0 and 1, not ${value}`)
 }
 
 /** Counts that can be: finite, not negative, no more events than units. They need not be whole. */
 export function requireCounts(name: string, events: number, units: number): void {
-  if (!Number.isFinite(units) || units < 0) throw new RangeError(`${name}: units must be 0 or more, not ${units}`)
+  if (!Number.isFinite(units) || units < 0)
+    throw new RangeError(`${name}: units must be 0 or more, not ${units}`)
   // A hair of slack: an effective number of events is a product of fractions.
   if (!(events >= 0 && events <= units * (1 + 1e-12)))
     throw new RangeError(`${name}: events must lie between 0 and ${units}, not ${events}`)

@@ -11,10 +11,13 @@
 export function benjaminiHochberg(input: { pValues: readonly number[] }): { qValues: number[] } {
   const { pValues } = input
   pValues.forEach((p, index) => {
-    if (!(p >= 0 && p <= 1)) throw new RangeError(`pValues[${index}] must lie between 0 and 1, not ${p}`)
+    if (!(p >= 0 && p <= 1))
+      throw new RangeError(`pValues[${index}] must lie between 0 and 1, not ${p}`)
   })
   const n = pValues.length
-  const order = pValues.map((_, index) => index).sort((i, j) => (pValues[j] as number) - (pValues[i] as number))
+  const order = pValues
+    .map((_, index) => index)
+    .sort((i, j) => (pValues[j] as number) - (pValues[i] as number))
   const qValues = new Array<number>(n).fill(1)
   let smallest = 1
   order.forEach((index, place) => {

@@ -80,7 +80,13 @@ function checkCase(run: Method, one: ReferenceCase): CaseResult {
   return { name: one.name, source: one.source ?? '', passes: problems.length === 0, problems }
 }
 
-function compare(path: string, expected: unknown, got: unknown, one: ReferenceCase, problems: string[]): void {
+function compare(
+  path: string,
+  expected: unknown,
+  got: unknown,
+  one: ReferenceCase,
+  problems: string[],
+): void {
   const differs = (): void => {
     problems.push(`${path || 'result'}: expected ${JSON.stringify(expected)}, got ${shown(got)}`)
   }
@@ -92,12 +98,22 @@ function compare(path: string, expected: unknown, got: unknown, one: ReferenceCa
   } else if (expected !== null && typeof expected === 'object') {
     if (got === null || typeof got !== 'object') return differs()
     for (const [key, value] of Object.entries(expected)) {
-      compare(path ? `${path}.${key}` : key, value, (got as Record<string, unknown>)[key], one, problems)
+      compare(
+        path ? `${path}.${key}` : key,
+        value,
+        (got as Record<string, unknown>)[key],
+        one,
+        problems,
+      )
     }
   } else if (got !== expected) differs()
 }
 
-function close(expected: number, got: number, { tolerance, relativeTolerance }: ReferenceCase): boolean {
+function close(
+  expected: number,
+  got: number,
+  { tolerance, relativeTolerance }: ReferenceCase,
+): boolean {
   const difference = Math.abs(got - expected)
   // Written so that NaN fails.
   if (!(difference <= tolerance * Math.max(1, Math.abs(expected)))) return false

@@ -15,7 +15,11 @@ import type { Interval } from './wilsonInterval.js'
  *
  * Clopper and Pearson 1934, Biometrika 26:404-413.
  */
-export function clopperPearsonInterval(input: { events: number; units: number; level: number }): Interval {
+export function clopperPearsonInterval(input: {
+  events: number
+  units: number
+  level: number
+}): Interval {
   const { events, units, level } = input
   requireCounts('clopperPearsonInterval', events, units)
   requireProbability('level', level)

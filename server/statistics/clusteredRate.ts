@@ -53,8 +53,18 @@ const NOTHING: ClusteredRate = {
  *
  * Cochran 1977, Sampling Techniques, chapters 6 and 9A; Wilson 1927 for the interval.
  */
-export function clusteredRate(input: { clusters: readonly Counts[]; level: number }): ClusteredRate {
-  const sums: ClusterSums = { G: 0, sumUnits: 0, sumEvents: 0, sumUnits2: 0, sumUnitsEvents: 0, sumEvents2: 0 }
+export function clusteredRate(input: {
+  clusters: readonly Counts[]
+  level: number
+}): ClusteredRate {
+  const sums: ClusterSums = {
+    G: 0,
+    sumUnits: 0,
+    sumEvents: 0,
+    sumUnits2: 0,
+    sumUnitsEvents: 0,
+    sumEvents2: 0,
+  }
   input.clusters.forEach(({ events, units }, index) => {
     requireCounts(`clusters[${index}]`, events, units)
     if (units === 0) return
@@ -82,7 +92,10 @@ export function clusteredRateFromSums(input: ClusterSums & { level: number }): C
   if (G === 0 || M === 0) return { ...NOTHING }
   const rate = Y / M
   if (G === 1) return { ...NOTHING, rate }
-  const spread = Math.max(0, input.sumEvents2 - 2 * rate * input.sumUnitsEvents + rate * rate * input.sumUnits2)
+  const spread = Math.max(
+    0,
+    input.sumEvents2 - 2 * rate * input.sumUnitsEvents + rate * rate * input.sumUnits2,
+  )
   const variance = ((G / (G - 1)) * spread) / (M * M)
   const certain = Y === 0 || Y === M
   const designEffect = certain ? null : variance / ((rate * (1 - rate)) / M)

@@ -30,10 +30,15 @@ export interface ClusteredRiskRatio {
  *
  * Efron and Stein 1981, Annals of Statistics 9:586-596; Cochran 1977.
  */
-export function clusteredRiskRatio(input: { clusters: readonly TwoGroups[]; level: number }): ClusteredRiskRatio {
+export function clusteredRiskRatio(input: {
+  clusters: readonly TwoGroups[]
+  level: number
+}): ClusteredRiskRatio {
   requireProbability('level', input.level)
   input.clusters.forEach((cluster, index) => requireGroups(`clusters[${index}]`, cluster))
-  const clusters = input.clusters.filter((cluster) => cluster.exposedUnits + cluster.unexposedUnits > 0)
+  const clusters = input.clusters.filter(
+    (cluster) => cluster.exposedUnits + cluster.unexposedUnits > 0,
+  )
   const total = sum(clusters)
   const fewer = Math.min(
     clusters.filter((cluster) => cluster.exposedUnits > 0).length,
@@ -49,7 +54,8 @@ export function clusteredRiskRatio(input: { clusters: readonly TwoGroups[]; leve
     pValueRaised: null,
     degreesOfFreedom,
   })
-  if (total.exposedUnits === 0 || total.unexposedUnits === 0 || total.unexposedEvents === 0) return alone(null)
+  if (total.exposedUnits === 0 || total.unexposedUnits === 0 || total.unexposedEvents === 0)
+    return alone(null)
   if (total.exposedEvents === 0) return alone(0)
   const b = logRatio(total)
   const ratio = Math.exp(b)
@@ -74,7 +80,9 @@ export function clusteredRiskRatio(input: { clusters: readonly TwoGroups[]; leve
 }
 
 function logRatio(groups: TwoGroups): number {
-  return Math.log(groups.exposedEvents / groups.exposedUnits / (groups.unexposedEvents / groups.unexposedUnits))
+  return Math.log(
+    groups.exposedEvents / groups.exposedUnits / (groups.unexposedEvents / groups.unexposedUnits),
+  )
 }
 
 function sum(clusters: readonly TwoGroups[]): TwoGroups {

@@ -22,7 +22,9 @@ const FUNCTIONS: Record<string, (a: Arguments) => number> = {
  * @param input function: a name of ./distributions.ts; the other keys are its arguments by name.
  * @throws RangeError for an unknown function or a missing argument.
  */
-export function distributions(input: { function: string } & Record<string, unknown>): { value: number } {
+export function distributions(input: { function: string } & Record<string, unknown>): {
+  value: number
+} {
   const named = FUNCTIONS[input.function]
   if (!named) throw new RangeError(`function: no distribution function ${input.function}`)
   return { value: named(input as unknown as Arguments) }

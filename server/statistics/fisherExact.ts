@@ -9,10 +9,13 @@ import { logFactorial } from './distributions.js'
  *
  * Fisher 1935, The Design of Experiments; the sum by probability is the common modern variant.
  */
-export function fisherExact(input: { a: number; b: number; c: number; d: number }): { pValue: number } {
+export function fisherExact(input: { a: number; b: number; c: number; d: number }): {
+  pValue: number
+} {
   const { a, b, c, d } = input
   for (const [name, cell] of Object.entries({ a, b, c, d })) {
-    if (!Number.isInteger(cell) || cell < 0) throw new RangeError(`${name} must be a whole number of 0 or more`)
+    if (!Number.isInteger(cell) || cell < 0)
+      throw new RangeError(`${name} must be a whole number of 0 or more`)
   }
   const row = a + b
   const column = a + c

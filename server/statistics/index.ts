@@ -4,7 +4,12 @@ export * from './distributions.js'
 export { distributions } from './distributionByName.js'
 export { wilsonInterval, type Interval } from './wilsonInterval.js'
 export { clopperPearsonInterval } from './clopperPearsonInterval.js'
-export { clusteredRate, clusteredRateFromSums, type ClusteredRate, type ClusterSums } from './clusteredRate.js'
+export {
+  clusteredRate,
+  clusteredRateFromSums,
+  type ClusteredRate,
+  type ClusterSums,
+} from './clusteredRate.js'
 export { riskRatio, type RatioInterval, type TwoGroups } from './riskRatio.js'
 export { mantelHaenszelRiskRatio } from './mantelHaenszelRiskRatio.js'
 export { fisherExact } from './fisherExact.js'

@@ -1,6 +1,12 @@
 import { requireProbability } from './arguments.js'
 import { normalQuantile } from './distributions.js'
-import { logInterval, NO_RATIO, requireGroups, type RatioInterval, type TwoGroups } from './riskRatio.js'
+import {
+  logInterval,
+  NO_RATIO,
+  requireGroups,
+  type RatioInterval,
+  type TwoGroups,
+} from './riskRatio.js'
 
 /**
  * Common ratio of rates over strata: like is compared with like, then pooled.
@@ -14,7 +20,10 @@ import { logInterval, NO_RATIO, requireGroups, type RatioInterval, type TwoGroup
  *
  * Greenland and Robins 1985, Biometrics 41:55-68.
  */
-export function mantelHaenszelRiskRatio(input: { strata: readonly TwoGroups[]; level: number }): RatioInterval {
+export function mantelHaenszelRiskRatio(input: {
+  strata: readonly TwoGroups[]
+  level: number
+}): RatioInterval {
   requireProbability('level', input.level)
   let R = 0
   let S = 0

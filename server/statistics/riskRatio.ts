@@ -28,7 +28,9 @@ export function logInterval(ratio: number, standardError: number, quantile: numb
   const factor = Math.exp(quantile * standardError)
   const upper = ratio * factor
   // A hopelessly wide interval overflows: then there is no limit to state.
-  return Number.isFinite(upper) ? { ratio, lower: ratio / factor, upper } : { ratio, lower: null, upper: null }
+  return Number.isFinite(upper)
+    ? { ratio, lower: ratio / factor, upper }
+    : { ratio, lower: null, upper: null }
 }
 
 /**
@@ -48,5 +50,9 @@ export function riskRatio(input: TwoGroups & { level: number }): RatioInterval {
   if (c === 0 || n1 === 0 || n0 === 0) return { ...NO_RATIO }
   if (a === 0) return { ratio: 0, lower: null, upper: null }
   const variance = Math.max(0, 1 / a - 1 / n1 + 1 / c - 1 / n0)
-  return logInterval(a / n1 / (c / n0), Math.sqrt(variance), normalQuantile(1 - (1 - input.level) / 2))
+  return logInterval(
+    a / n1 / (c / n0),
+    Math.sqrt(variance),
+    normalQuantile(1 - (1 - input.level) / 2),
+  )
 }

@@ -78,7 +78,8 @@ export function testStrata(
       correlation,
       ...ratio.totals,
     },
-    scores: usable && correlation !== null ? { skewness: test.third / test.V ** 1.5, correlation } : null,
+    scores:
+      usable && correlation !== null ? { skewness: test.third / test.V ** 1.5, correlation } : null,
   }
 }
 
@@ -136,7 +137,10 @@ function rowCorrelation(rows: StrataRows, { M, Y }: StratumSums): number {
 /** Events of a row beyond its share of the stratum's, and beyond what is explained. */
 export function residual(rows: StrataRows, i: number, rate: number): number {
   const share = (rows.units[i] as number) * rate
-  const e = (rows.events[i] as number) - share - (rows.explained === undefined ? 0 : (rows.explained[i] as number))
+  const e =
+    (rows.events[i] as number) -
+    share -
+    (rows.explained === undefined ? 0 : (rows.explained[i] as number))
   // Equal rates on both sides leave only rounding: that is no difference, not a tiny one.
   return Math.abs(e) < 1e-12 * (1 + share) ? 0 : e
 }
@@ -151,7 +155,11 @@ export function rowScale(m: number, M: number, correlation: number): number {
  * Third moment of a linear permutation statistic: Σa′³·Σr′³·n/((n−1)(n−2)) for n rows (0 for two). Central sums come
  * from raw ones in one pass: r is near 0 on average and a of the size of its spread, so little is lost.
  */
-function moments(rows: StrataRows, { M, Y }: StratumSums, correlation: number): { T: number; V: number; third: number } {
+function moments(
+  rows: StrataRows,
+  { M, Y }: StratumSums,
+  correlation: number,
+): { T: number; V: number; third: number } {
   let T = 0
   let V = 0
   let third = 0

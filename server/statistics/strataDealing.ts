@@ -48,7 +48,8 @@ export function dealtStrata(rows: StrataRows, correlation: number): DealtStrata 
     exposedRows[strata] = next - start
     const mean = sum / (last - start)
     for (let i = start; i < last; i += 1) residuals[i] = (residuals[i] as number) - mean
-    for (let i = start; i < next; i += 1) observed += (scores[i] as number) * (residuals[i] as number)
+    for (let i = start; i < next; i += 1)
+      observed += (scores[i] as number) * (residuals[i] as number)
     next = last
     strata += 1
     starts[strata] = next

@@ -6,7 +6,12 @@ export interface StrataRatio {
   lower: number | null
   upper: number | null
   mixedStrata: number
-  totals: { exposedUnits: number; exposedEvents: number; unexposedUnits: number; unexposedEvents: number }
+  totals: {
+    exposedUnits: number
+    exposedEvents: number
+    unexposedUnits: number
+    unexposedEvents: number
+  }
 }
 
 /** Running sums; one object for a whole test. */
@@ -24,7 +29,11 @@ interface Sums {
  * Mantel–Haenszel ratio over the mixed strata, with limits by leaving out one stratum (or one row of a stratum) with
  * events at a time. Two passes: the sums, then what each part takes away from them.
  */
-export function ratioWithLimits(rows: StrataRows, level: number, leaveOut: 'stratum' | 'row'): StrataRatio {
+export function ratioWithLimits(
+  rows: StrataRows,
+  level: number,
+  leaveOut: 'stratum' | 'row',
+): StrataRatio {
   const sums: Sums = {
     R: 0,
     S: 0,

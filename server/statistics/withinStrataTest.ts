@@ -31,7 +31,10 @@ export interface StrataRow {
  * Mantel and Haenszel 1959; linear permutation statistics: Wald and Wolfowitz 1944, Annals of Mathematical
  * Statistics 15:358-372; blocks: Strasser and Weber 1999. The standardising by a clumped variance is our own.
  */
-export function withinStrataTest(input: { rows: readonly StrataRow[]; level: number }): WithinStrata {
+export function withinStrataTest(input: {
+  rows: readonly StrataRow[]
+  level: number
+}): WithinStrata {
   requireProbability('level', input.level)
   return testStrata(groupByStratum(input.rows), input.level).result
 }

@@ -11,7 +11,11 @@ import type { StudyFactor } from './types.js'
 export function arrangeTable(raw: RawColumns): StudyTable {
   const firingNames = raw.firings.names.sorted()
   const place = (row: number): number => (firingNames.remap[raw.firing.get(row) + 1] as number) - 1
-  const renamed = raw.factors.map(({ factor, codes, names }) => ({ factor, codes, ...sortedLevels(factor, names) }))
+  const renamed = raw.factors.map(({ factor, codes, names }) => ({
+    factor,
+    codes,
+    ...sortedLevels(factor, names),
+  }))
   const formings = raw.formings.sorted()
   const order = rowOrder(raw, place, firingNames.names.length, [
     { codes: raw.forming, remap: formings.remap },
@@ -19,7 +23,8 @@ export function arrangeTable(raw: RawColumns): StudyTable {
   ])
   const start = new Int32Array(firingNames.names.length + 1)
   for (const row of order) start[place(row) + 1] = (start[place(row) + 1] as number) + 1
-  for (let f = 0; f < firingNames.names.length; f += 1) start[f + 1] = (start[f + 1] as number) + (start[f] as number)
+  for (let f = 0; f < firingNames.names.length; f += 1)
+    start[f + 1] = (start[f + 1] as number) + (start[f] as number)
   return {
     rows: order.length,
     offered: raw.offered.arranged(order),
@@ -30,7 +35,10 @@ export function arrangeTable(raw: RawColumns): StudyTable {
     joint: Uint8Array.from(raw.joint.arranged(order)),
     forming: raw.forming.arranged(order, formings.remap),
     formings: formings.names,
-    standsFor: raw.standsFor.size > 0 ? Float64Array.from(order, (row) => raw.standsFor.get(row) ?? 1) : null,
+    standsFor:
+      raw.standsFor.size > 0
+        ? Float64Array.from(order, (row) => raw.standsFor.get(row) ?? 1)
+        : null,
     factors: renamed.map(({ factor, codes, levels, sets, remap }) => ({
       factor,
       levels,
@@ -102,7 +110,9 @@ function sortedLevels(factor: StudyFactor, names: Dictionary): SortedLevels {
   if (!factor.several) return { levels: keys, sets: null, remap }
   const levels = [...new Set(keys.flatMap(levelsOfKey))].sort(compareText)
   const number = new Map(levels.map((level, index) => [level, index + 1]))
-  const sets = keys.map((key) => Int32Array.from(levelsOfKey(key), (level) => number.get(level) as number))
+  const sets = keys.map((key) =>
+    Int32Array.from(levelsOfKey(key), (level) => number.get(level) as number),
+  )
   return { levels, sets: [new Int32Array(0), ...sets], remap }
 }
 
@@ -119,12 +129,18 @@ function arrangeFirings(
     count: names.length,
     names,
     start,
-    studio: Uint32Array.from(order, (old) => (studios.remap[raw.firings.studio[old] as number] as number) - 1),
+    studio: Uint32Array.from(
+      order,
+      (old) => (studios.remap[raw.firings.studio[old] as number] as number) - 1,
+    ),
     studios: studios.names,
     kind: [...order].map((old) => raw.firings.kind[old] as StudyFirings['kind'][number]),
     factors: raw.firingFactors.map(({ factor, codes, names: levelNames }): FactorColumn => {
       const sorted = sortedLevels(factor, levelNames)
-      const arranged: Codes = Uint32Array.from(order, (old) => sorted.remap[codes[old] as number] as number)
+      const arranged: Codes = Uint32Array.from(
+        order,
+        (old) => sorted.remap[codes[old] as number] as number,
+      )
       return { factor, levels: sorted.levels, sets: sorted.sets, codes: arranged }
     }),
   }
@@ -136,7 +152,8 @@ function arrangeLosses(raw: RawColumns, order: Int32Array): StudyTable['losses']
     placeOf[row] = index
   })
   const kept: number[] = []
-  for (let i = 0; i < raw.lossRow.length; i += 1) if ((placeOf[raw.lossRow.get(i)] as number) >= 0) kept.push(i)
+  for (let i = 0; i < raw.lossRow.length; i += 1)
+    if ((placeOf[raw.lossRow.get(i)] as number) >= 0) kept.push(i)
   const pick = Int32Array.from(kept)
   const sets = raw.faultSets.names.map(levelsOfKey)
   return {

@@ -45,7 +45,11 @@ export function atRiskKey(fault: StudyFault): string {
  *
  * The rest of a firing is a stratum of its own.
  */
-export function atRiskLots(table: StudyTable, fault: StudyFault, studio: number | null): AtRiskLots {
+export function atRiskLots(
+  table: StudyTable,
+  fault: StudyFault,
+  studio: number | null,
+): AtRiskLots {
   const { firings } = table
   const pieces = fault.seenBeforeFiring ? table.offered : table.fired
   const source = new Int32Array(table.rows)
@@ -64,7 +68,13 @@ export function atRiskLots(table: StudyTable, fault: StudyFault, studio: number 
     }
     if (part >= 0) starts.push(rows)
   }
-  return panelOf(table, source.slice(0, rows), Int32Array.from(starts), pieces, fault.seenBeforeFiring)
+  return panelOf(
+    table,
+    source.slice(0, rows),
+    Int32Array.from(starts),
+    pieces,
+    fault.seenBeforeFiring,
+  )
 }
 
 function panelOf(
@@ -85,7 +95,16 @@ function panelOf(
     units[i] = pieces[row] as number
     if (represents !== null) represents[i] = (units[i] as number) * (table.standsFor?.[row] ?? 1)
   }
-  return { rows: source.length, strata: starts.length - 1, starts, units, represents, firing, source, overOffered }
+  return {
+    rows: source.length,
+    strata: starts.length - 1,
+    starts,
+    units,
+    represents,
+    firing,
+    source,
+    overOffered,
+  }
 }
 
 function rowAtRisk(table: StudyTable, fault: StudyFault, row: number): boolean {
@@ -99,12 +118,24 @@ function lotRuledOut(table: StudyTable, fault: StudyFault, row: number): boolean
   if (fault.needsGlaze && table.glaze[row] === NO) return true
   if (fault.needsJoint && table.joint[row] === NO) return true
   const forming = table.forming[row] as number
-  return forming > 0 && fault.forming.length > 0 && !fault.forming.includes(table.formings[forming - 1] as string)
+  return (
+    forming > 0 &&
+    fault.forming.length > 0 &&
+    !fault.forming.includes(table.formings[forming - 1] as string)
+  )
 }
 
 /** The kind of firing or something recorded of the lot rules the fault out: a loss reported there is to be checked. */
-export function isRuledOut(table: StudyTable, fault: StudyFault, row: number, firing: number): boolean {
-  return !fault.seenIn.includes(table.firings.kind[firing] as FiringKind) || lotRuledOut(table, fault, row)
+export function isRuledOut(
+  table: StudyTable,
+  fault: StudyFault,
+  row: number,
+  firing: number,
+): boolean {
+  return (
+    !fault.seenIn.includes(table.firings.kind[firing] as FiringKind) ||
+    lotRuledOut(table, fault, row)
+  )
 }
 
 /** Firings as rows and studio × kind as strata; pieces of lots and of the rest as a whole. */
@@ -122,7 +153,8 @@ export function atRiskFirings(table: StudyTable, lots: AtRiskLots): Panel {
 /** A panel of the firings that have units, by studio and kind. */
 export function firingPanel(table: StudyTable, units: Float64Array): Panel {
   const { firings } = table
-  const group = (f: number): string => `${String(firings.studio[f]).padStart(9, '0')} ${firings.kind[f]}`
+  const group = (f: number): string =>
+    `${String(firings.studio[f]).padStart(9, '0')} ${firings.kind[f]}`
   const groups = new Map<string, number[]>()
   for (let f = 0; f < firings.count; f += 1) {
     if ((units[f] as number) <= 0) continue

@@ -1,5 +1,12 @@
 import { atRiskFirings, atRiskLots, type AtRiskLots, type Panel } from './atRisk.js'
-import { firingsByLots, firingView, lotView, pairView, type FactorView, type FiringsByLots } from './factorView.js'
+import {
+  firingsByLots,
+  firingView,
+  lotView,
+  pairView,
+  type FactorView,
+  type FiringsByLots,
+} from './factorView.js'
 import { coverage, levelTotals, type LevelTotals } from './levelTotals.js'
 import { NO, REST_PIECE, type FactorColumn, type StudyTable } from './table.js'
 import { StratumLevels } from './stratumLevels.js'
@@ -43,7 +50,9 @@ export class Denominator {
 
   /** A lot factor on the lots. */
   onLots(column: FactorColumn): Viewed {
-    return this.once(`lots ${column.factor.id}`, () => viewed(this.lots, lotView(column, this.lots)))
+    return this.once(`lots ${column.factor.id}`, () =>
+      viewed(this.lots, lotView(column, this.lots)),
+    )
   }
 
   /** Pairs of two lot factors on the lots. */
@@ -55,7 +64,9 @@ export class Denominator {
 
   /** A firing factor on the firings. */
   onFirings(column: FactorColumn): Viewed {
-    return this.once(`firings ${column.factor.id}`, () => viewed(this.firings, firingView(column, this.firings)))
+    return this.once(`firings ${column.factor.id}`, () =>
+      viewed(this.firings, firingView(column, this.firings)),
+    )
   }
 
   /** A lot factor on whole firings. */
@@ -69,7 +80,9 @@ export class Denominator {
   /** Share of the pieces at risk for which every one of the lot factors is recorded, where it applies. */
   lotCoverage(columns: readonly FactorColumn[], view: FactorView): number {
     return this.once(`coverage ${view.factors.join()}`, () =>
-      coverage(this.lots, view, (i) => this.applies(columns, this.lots.source[i] as number, this.lots.firing[i] as number)),
+      coverage(this.lots, view, (i) =>
+        this.applies(columns, this.lots.source[i] as number, this.lots.firing[i] as number),
+      ),
     )
   }
 
@@ -77,7 +90,10 @@ export class Denominator {
     if (this.table.part[row] === REST_PIECE) return false
     return columns.every(({ factor }) => {
       if (factor.applies === 'joint') return this.table.joint[row] !== NO
-      return factor.applies !== 'glaze' || (this.table.glaze[row] !== NO && this.table.firings.kind[firing] !== 'bisque')
+      return (
+        factor.applies !== 'glaze' ||
+        (this.table.glaze[row] !== NO && this.table.firings.kind[firing] !== 'bisque')
+      )
     })
   }
 

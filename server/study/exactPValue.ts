@@ -36,7 +36,8 @@ export function exactPValue(
   for (let draw = 1; draw <= MOST_DRAWS; draw += 1) {
     if (Math.abs(dealOnce(dealt, random)) >= limit) exceedances += 1
     if (exceedances === EXCEEDANCES) return { pValue: EXCEEDANCES / draw, method: 'dealt' }
-    if (draw === most && exceedances === 0) return { pValue: Math.min(tail, 1 / (draw + 1)), method: 'tail' }
+    if (draw === most && exceedances === 0)
+      return { pValue: Math.min(tail, 1 / (draw + 1)), method: 'tail' }
   }
   return { pValue: Math.min(tail, (exceedances + 1) / (MOST_DRAWS + 1)), method: 'tail' }
 }
@@ -49,7 +50,9 @@ export function pearsonTail(z: number, skewness: number): number {
   // A gamma this close to normal is normal to three digits, and its shape grows without bound.
   if (Math.abs(skewness) < 0.01) return normalTwoSided(z)
   const shape = 4 / (skewness * skewness)
-  const upper = (t: number): number => chiSquareUpperTail(2 * (shape + t * Math.sqrt(shape)), 2 * shape)
+  // Below its least value, -2/γ standardised, all of the distribution lies above.
+  const upper = (t: number): number =>
+    t <= -Math.sqrt(shape) ? 1 : chiSquareUpperTail(2 * (shape + t * Math.sqrt(shape)), 2 * shape)
   const size = Math.abs(z)
   return Math.min(1, upper(size) + (1 - upper(-size)))
 }

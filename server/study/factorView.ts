@@ -66,7 +66,9 @@ export function pairView(first: FactorColumn, second: FactorColumn, lots: AtRisk
     if (code === undefined) {
       code = sets.length
       combinations.set(a * width + b, code)
-      sets.push(pairsOf(levelsOf(first, a), levelsOf(second, b), second.levels.length + 1, pairs, members))
+      sets.push(
+        pairsOf(levelsOf(first, a), levelsOf(second, b), second.levels.length + 1, pairs, members),
+      )
     }
     codes[i] = code
   }
@@ -119,7 +121,11 @@ export interface FiringsByLots {
 }
 
 /** Firings as rows, with the levels of a lot factor that any of their lots and that all of their lots had. */
-export function firingsByLots(table: StudyTable, lots: AtRiskLots, view: FactorView): FiringsByLots {
+export function firingsByLots(
+  table: StudyTable,
+  lots: AtRiskLots,
+  view: FactorView,
+): FiringsByLots {
   const units = new Float64Array(table.firings.count)
   const any: Set<number>[] = []
   const all: Set<number>[] = []
@@ -135,7 +141,8 @@ export function firingsByLots(table: StudyTable, lots: AtRiskLots, view: FactorV
       all[f] = new Set(levels)
     } else {
       for (const level of levels) known.add(level)
-      for (const level of all[f] as Set<number>) if (!levels.includes(level)) (all[f] as Set<number>).delete(level)
+      for (const level of all[f] as Set<number>)
+        if (!levels.includes(level)) (all[f] as Set<number>).delete(level)
     }
   }
   const panel = firingPanel(table, units)

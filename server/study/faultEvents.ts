@@ -15,8 +15,10 @@ export function lossesByFault(table: StudyTable, faults: readonly StudyFault[]):
   const nodesOfSet = table.losses.faultSets.map((set) => nodesOf(set, faults, index))
   const start = new Int32Array(faults.length + 1)
   for (let i = 0; i < table.losses.count; i += 1)
-    for (const k of nodesOfSet[table.losses.faults[i] as number] as number[]) start[k + 1] = (start[k + 1] as number) + 1
-  for (let k = 0; k < faults.length; k += 1) start[k + 1] = (start[k + 1] as number) + (start[k] as number)
+    for (const k of nodesOfSet[table.losses.faults[i] as number] as number[])
+      start[k + 1] = (start[k + 1] as number) + 1
+  for (let k = 0; k < faults.length; k += 1)
+    start[k + 1] = (start[k + 1] as number) + (start[k] as number)
   const next = start.slice()
   const loss = new Int32Array(start[faults.length] as number)
   for (let i = 0; i < table.losses.count; i += 1) {
@@ -28,7 +30,11 @@ export function lossesByFault(table: StudyTable, faults: readonly StudyFault[]):
   return { start, loss }
 }
 
-function nodesOf(set: readonly string[], faults: readonly StudyFault[], index: ReadonlyMap<string, number>): number[] {
+function nodesOf(
+  set: readonly string[],
+  faults: readonly StudyFault[],
+  index: ReadonlyMap<string, number>,
+): number[] {
   const nodes = new Set<number>()
   for (const id of set) {
     let at: string | null = id

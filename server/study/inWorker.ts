@@ -44,7 +44,10 @@ export interface StudyThreadOptions {
  * Computes a study in a thread of its own, so that whoever serves requests meanwhile is not held up.
  * @throws what the thread threw (no database, impossible rows), or the signal's reason
  */
-export async function studyInWorker(order: StudyOrder, { onProgress, signal }: StudyThreadOptions = {}): Promise<StudyAnswer> {
+export async function studyInWorker(
+  order: StudyOrder,
+  { onProgress, signal }: StudyThreadOptions = {},
+): Promise<StudyAnswer> {
   signal?.throwIfAborted()
   const worker = await startThread(order)
   const end = (): void => void worker.terminate()
@@ -57,7 +60,11 @@ export async function studyInWorker(order: StudyOrder, { onProgress, signal }: S
   }
 }
 
-function answerOf(worker: Worker, onProgress: StudyThreadOptions['onProgress'], signal: AbortSignal | undefined): Promise<StudyAnswer> {
+function answerOf(
+  worker: Worker,
+  onProgress: StudyThreadOptions['onProgress'],
+  signal: AbortSignal | undefined,
+): Promise<StudyAnswer> {
   return new Promise((resolveAnswer, reject) => {
     worker.on('message', (message: StudyMessage) => {
       if (message.type === 'progress') onProgress?.(message.percent)
@@ -66,15 +73,24 @@ function answerOf(worker: Worker, onProgress: StudyThreadOptions['onProgress'], 
     worker.once('error', reject)
     worker.once('exit', (code) => {
       const reason: unknown = signal?.reason
-      reject(reason instanceof Error ? reason : new Error(`The study's thread ended early (code ${code}).`))
+      reject(
+        reason instanceof Error
+          ? reason
+          : new Error(`The study's thread ended early (code ${code}).`),
+      )
     })
   })
 }
 
 /** Built servers start the built file; from source (dev, tests, tools) it is bundled when first needed. */
 async function startThread(order: StudyOrder): Promise<Worker> {
-  if (!import.meta.url.endsWith('.ts')) return new Worker(resolve('dist/server/study/worker.js'), { workerData: order })
-  return new Worker(await bundled(), { eval: true, workerData: order, execArgv: ['--input-type=module'] })
+  if (!import.meta.url.endsWith('.ts'))
+    return new Worker(resolve('dist/server/study/worker.js'), { workerData: order })
+  return new Worker(await bundled(), {
+    eval: true,
+    workerData: order,
+    execArgv: ['--input-type=module'],
+  })
 }
 
 let bundle: Promise<string> | undefined

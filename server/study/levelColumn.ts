@@ -43,7 +43,8 @@ export class CodeColumn {
 
   push(code: number): void {
     if (this.length === this.values.length) this.values = grown(this.values)
-    if (code > 0xffff && this.values instanceof Uint16Array) this.values = Uint32Array.from(this.values)
+    if (code > 0xffff && this.values instanceof Uint16Array)
+      this.values = Uint32Array.from(this.values)
     this.values[this.length] = code
     this.length += 1
   }
@@ -54,8 +55,10 @@ export class CodeColumn {
 
   /** The codes in a new order, renamed. */
   arranged(order: Int32Array, remap: Uint32Array): Codes {
-    const out = remap.length > 0x10000 ? new Uint32Array(order.length) : new Uint16Array(order.length)
-    for (let i = 0; i < order.length; i += 1) out[i] = remap[this.values[order[i] as number] as number] as number
+    const out =
+      remap.length > 0x10000 ? new Uint32Array(order.length) : new Uint16Array(order.length)
+    for (let i = 0; i < order.length; i += 1)
+      out[i] = remap[this.values[order[i] as number] as number] as number
     return out
   }
 }
@@ -88,7 +91,10 @@ export class NumberColumn {
 }
 
 function grown(values: Codes): Codes {
-  const larger = values instanceof Uint16Array ? new Uint16Array(values.length * 2) : new Uint32Array(values.length * 2)
+  const larger =
+    values instanceof Uint16Array
+      ? new Uint16Array(values.length * 2)
+      : new Uint32Array(values.length * 2)
   larger.set(values)
   return larger
 }

@@ -22,7 +22,10 @@ export function levelTable(
     const code = codeAt(view, i)
     if (code === 0) continue
     const lost = events[i] as number
-    const units = panel.represents !== null && lost === 0 ? (panel.represents[i] as number) : (panel.units[i] as number)
+    const units =
+      panel.represents !== null && lost === 0
+        ? (panel.represents[i] as number)
+        : (panel.units[i] as number)
     for (const one of view.sets === null ? [code] : (view.sets[code] as Int32Array)) {
       let mine = sums.get(one)
       if (mine === undefined) {
@@ -42,7 +45,14 @@ class LevelSums {
   private firing = -1
   private units = 0
   private events = 0
-  private readonly sums = { G: 0, sumUnits: 0, sumEvents: 0, sumUnits2: 0, sumUnitsEvents: 0, sumEvents2: 0 }
+  private readonly sums = {
+    G: 0,
+    sumUnits: 0,
+    sumEvents: 0,
+    sumUnits2: 0,
+    sumUnitsEvents: 0,
+    sumEvents2: 0,
+  }
 
   add(firing: number, units: number, events: number): void {
     if (firing !== this.firing) this.close()

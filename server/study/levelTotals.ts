@@ -32,7 +32,11 @@ export function levelTotals(panel: Panel, view: FactorView, sums: StratumLevels)
 }
 
 /** Share of the pieces for which the factor is recorded, of those that it applies to. */
-export function coverage(panel: Panel, view: FactorView, applies: (row: number) => boolean): number {
+export function coverage(
+  panel: Panel,
+  view: FactorView,
+  applies: (row: number) => boolean,
+): number {
   let recorded = 0
   let all = 0
   for (let i = 0; i < panel.rows; i += 1) {

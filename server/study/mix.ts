@@ -52,7 +52,9 @@ function fit(
     lost,
   }
   for (let sweep = 0; sweep < SWEEPS; sweep += 1)
-    columns.forEach((column, c) => refit(lots, events, column, multipliers[c] as Float64Array, working))
+    columns.forEach((column, c) =>
+      refit(lots, events, column, multipliers[c] as Float64Array, working),
+    )
   return multipliers
 }
 

@@ -1,4 +1,9 @@
-import { testStrata, type StrataRows, type TestScores, type WithinStrata } from '../statistics/strata.js'
+import {
+  testStrata,
+  type StrataRows,
+  type TestScores,
+  type WithinStrata,
+} from '../statistics/strata.js'
 import type { Panel } from './atRisk.js'
 import { exactPValue } from './exactPValue.js'
 import { codeAt, exposure, type FactorView } from './factorView.js'
@@ -97,12 +102,20 @@ export function screenFactor(input: ScreenInput): Screened {
   const tested: Tested[] = []
   for (const candidate of eligible) {
     const within = input.comparison === 'within-firings'
-    const { result, scores } = testStrata(gather(input, candidate), input.level, within ? 'stratum' : 'row')
+    const { result, scores } = testStrata(
+      gather(input, candidate),
+      input.level,
+      within ? 'stratum' : 'row',
+    )
     const informative = informativeFirings(input, candidate, result)
-    if (informative >= LEAST_INFORMATIVE) tested.push({ ...candidate, result, scores, informativeFirings: informative })
+    if (informative >= LEAST_INFORMATIVE)
+      tested.push({ ...candidate, result, scores, informativeFirings: informative })
     else if (within) hardlyMixed.push(candidate.level)
   }
-  return { comparisons: onceEach(input.totals, tested).map((one) => comparisonOf(input, one)), hardlyMixed }
+  return {
+    comparisons: onceEach(input.totals, tested).map((one) => comparisonOf(input, one)),
+    hardlyMixed,
+  }
 }
 
 /** Levels met in strata with events, each with the strata where it was mixed with others. */
@@ -131,7 +144,10 @@ function candidatesOf({ panel, sums, events, touched, only }: ScreenInput): Cand
   return [...byLevel.values()].sort((a, b) => a.level - b.level)
 }
 
-function isEligible(totals: LevelTotals, { level, exposedEvents, unexposedEvents }: Candidate): boolean {
+function isEligible(
+  totals: LevelTotals,
+  { level, exposedEvents, unexposedEvents }: Candidate,
+): boolean {
   return (
     (totals.exposedUnits[level] as number) >= LEAST_UNITS &&
     (totals.unexposedUnits[level] as number) >= LEAST_UNITS &&
@@ -140,7 +156,11 @@ function isEligible(totals: LevelTotals, { level, exposedEvents, unexposedEvents
 }
 
 /** Lots: firings are the strata. Firings: the rows of informative strata, if both sides have more than one. */
-function informativeFirings({ comparison, scratch }: ScreenInput, { strata }: Candidate, result: WithinStrata): number {
+function informativeFirings(
+  { comparison, scratch }: ScreenInput,
+  { strata }: Candidate,
+  result: WithinStrata,
+): number {
   if (comparison === 'within-firings') return result.informativeStrata
   const rows = scratch.starts[strata.length] as number
   let exposed = 0
@@ -149,7 +169,10 @@ function informativeFirings({ comparison, scratch }: ScreenInput, { strata }: Ca
 }
 
 /** Copies the recorded rows of the candidate's strata into the scratch arrays. */
-function gather({ panel, view, events, expected, scratch }: ScreenInput, { level, strata }: Candidate): StrataRows {
+function gather(
+  { panel, view, events, expected, scratch }: ScreenInput,
+  { level, strata }: Candidate,
+): StrataRows {
   const { units, exposed, represents, starts } = scratch
   const standsFor = expected ?? panel.represents
   let next = 0
@@ -185,7 +208,11 @@ function gather({ panel, view, events, expected, scratch }: ScreenInput, { level
  * Scales the expectations of a stratum to its pieces, and takes as explained what they shift between its rows:
  * Y·(E/ΣE − m/M). Both add up to what they should, so that nothing but the mix is taken away.
  */
-function explain({ represents, explained, units, events }: Scratch, from: number, to: number): void {
+function explain(
+  { represents, explained, units, events }: Scratch,
+  from: number,
+  to: number,
+): void {
   let E = 0
   let M = 0
   let Y = 0
@@ -263,8 +290,15 @@ function pValueOf(input: ScreenInput, one: Tested): Pick<Comparison, 'pValue' | 
   const { result, scores } = one
   const pValue = result.pValue ?? 1
   const few = one.exposedEvents + one.unexposedEvents < FEW_EVENTS
-  if (result.statistic === null || scores === null || pValue >= WORTH_DEALING) return { pValue, method: 'normal' }
+  if (result.statistic === null || scores === null || pValue >= WORTH_DEALING)
+    return { pValue, method: 'normal' }
   if (!few && Math.abs(scores.skewness) <= SKEWED) return { pValue, method: 'normal' }
-  const seed = seedOf(input.seed, input.fault, input.comparison, ...input.view.factors, ...input.view.keys(one.level))
+  const seed = seedOf(
+    input.seed,
+    input.fault,
+    input.comparison,
+    ...input.view.factors,
+    ...input.view.keys(one.level),
+  )
   return exactPValue(gather(input, one), scores, result.statistic, seed)
 }

@@ -35,9 +35,14 @@ export function screenFault(screen: FaultScreen): Comparison[] {
 }
 
 /** Coverage and the table by level of one comparison of the fault. */
-export function describe(screen: FaultScreen, comparison: Comparison): { coverage: number; table: LevelLine[] } {
+export function describe(
+  screen: FaultScreen,
+  comparison: Comparison,
+): { coverage: number; table: LevelLine[] } {
   const { table, denominator, laid, level } = screen
-  const columns = comparison.factors.map((id) => table.factors.find((column) => column.factor.id === id))
+  const columns = comparison.factors.map((id) =>
+    table.factors.find((column) => column.factor.id === id),
+  )
   const [first, second] = columns
   if (first) {
     const on = second ? denominator.pairs(first, second) : denominator.onLots(first)
@@ -46,12 +51,20 @@ export function describe(screen: FaultScreen, comparison: Comparison): { coverag
       table: levelTable(on.panel, on.view, laid.events, level, comparison.levels),
     }
   }
-  const column = table.firings.factors.find(({ factor }) => factor.id === comparison.factors[0]) as FactorColumn
+  const column = table.firings.factors.find(
+    ({ factor }) => factor.id === comparison.factors[0],
+  ) as FactorColumn
   const { panel, view } = denominator.onFirings(column)
   const events = byFiring(screen)
   return {
     coverage: coverage(panel, view, () => true),
-    table: levelTable(panel, view, Float64Array.from(panel.firing, (f) => events[f] as number), level, comparison.levels),
+    table: levelTable(
+      panel,
+      view,
+      Float64Array.from(panel.firing, (f) => events[f] as number),
+      level,
+      comparison.levels,
+    ),
   }
 }
 
@@ -75,11 +88,22 @@ function lotFactor(screen: FaultScreen, on: Viewed): Comparison[] {
 }
 
 /** Levels that too few firings held beside others: firings that held nothing else against firings without. */
-function lotFactorBetween(screen: FaultScreen, on: Viewed, only: ReadonlySet<number>): Comparison[] {
+function lotFactorBetween(
+  screen: FaultScreen,
+  on: Viewed,
+  only: ReadonlySet<number>,
+): Comparison[] {
   const whole = screen.denominator.byFirings(on.view)
   const events = whole.events(screen.laid.events)
   const touched = strataWith(whole.panel.starts, events)
-  return screenFactor({ ...common(screen), ...whole, events, touched, comparison: 'between-firings', only }).comparisons
+  return screenFactor({
+    ...common(screen),
+    ...whole,
+    events,
+    touched,
+    comparison: 'between-firings',
+    only,
+  }).comparisons
 }
 
 function firingFactors(screen: FaultScreen): Comparison[] {

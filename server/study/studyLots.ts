@@ -29,12 +29,15 @@ export function studyLots(table: StudyTable, options: StudyOptions): StudyResult
   const every: Comparison[] = []
   const notAtRisk: StudyResult['notAtRisk'] = []
   eachFault(table, options, losses, asked, scope, (screen) => {
-    if (screen.laid.notAtRisk > 0) notAtRisk.push({ fault: screen.fault.id, pieces: screen.laid.notAtRisk })
+    if (screen.laid.notAtRisk > 0)
+      notAtRisk.push({ fault: screen.fault.id, pieces: screen.laid.notAtRisk })
     every.push(...screenFault(screen))
   })
   const { qValues } = benjaminiHochberg({ pValues: every.map((one) => one.pValue) })
   const keep = options.keep ?? 0.1
-  const found = every.map((one, i) => ({ one, qValue: qValues[i] as number })).filter(({ qValue }) => qValue <= keep)
+  const found = every
+    .map((one, i) => ({ one, qValue: qValues[i] as number }))
+    .filter(({ qValue }) => qValue <= keep)
   const findings = withTables(table, options, losses, asked, scope, found)
   notAtRisk.sort((a, b) => compareText(a.fault, b.fault))
   return {
@@ -77,18 +80,33 @@ function eachFault(
   const firingOf = firingOfRows(table)
   const groups = groupBy(asked, (k) => atRiskKey(options.faults[k] as StudyFault))
   for (const group of groups.values()) {
-    const denominator = new Denominator(table, options.faults[group[0] as number] as StudyFault, scope)
+    const denominator = new Denominator(
+      table,
+      options.faults[group[0] as number] as StudyFault,
+      scope,
+    )
     const { lots, placeOf, stratumOf } = denominator
     const events = new Float64Array(lots.rows)
     for (const k of group) {
       const fault = options.faults[k] as StudyFault
       const isOut = (row: number): boolean => {
         const firing = firingOf[row] as number
-        return (scope === null || table.firings.studio[firing] === scope) && isRuledOut(table, fault, row, firing)
+        return (
+          (scope === null || table.firings.studio[firing] === scope) &&
+          isRuledOut(table, fault, row, firing)
+        )
       }
       events.fill(0)
       const laid = layEvents(table, losses, k, lots, placeOf, stratumOf, events, isOut)
-      visit({ table, fault, denominator, laid, level: options.level ?? 0.95, seed: options.seed ?? 1, scratch })
+      visit({
+        table,
+        fault,
+        denominator,
+        laid,
+        level: options.level ?? 0.95,
+        seed: options.seed ?? 1,
+        scratch,
+      })
     }
   }
 }
@@ -132,14 +150,21 @@ function bySureness(a: Finding, b: Finding): number {
   )
 }
 
-function sizeOf(table: StudyTable, scope: number | null): Pick<StudyResult, 'firings' | 'lots' | 'pieces'> {
+function sizeOf(
+  table: StudyTable,
+  scope: number | null,
+): Pick<StudyResult, 'firings' | 'lots' | 'pieces'> {
   let firings = 0
   let lots = 0
   let pieces = 0
   for (let f = 0; f < table.firings.count; f += 1) {
     if (scope !== null && table.firings.studio[f] !== scope) continue
     firings += 1
-    for (let row = table.firings.start[f] as number; row < (table.firings.start[f + 1] as number); row += 1) {
+    for (
+      let row = table.firings.start[f] as number;
+      row < (table.firings.start[f + 1] as number);
+      row += 1
+    ) {
       if (table.part[row] === LOT) lots += 1
       if (table.part[row] !== REST_PIECE) pieces += Math.max(0, table.fired[row] as number)
     }

@@ -52,6 +52,7 @@ export interface StudyFirings {
   names: readonly string[]
   /** Rows of firing f: start[f] … start[f + 1] − 1. */
   start: Int32Array
+  /** Place of the firing's studio in `studios`, from 0. */
   studio: Codes
   studios: readonly string[]
   kind: readonly FiringKind[]

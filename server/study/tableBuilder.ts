@@ -53,9 +53,17 @@ export class StudyTableBuilder {
       forming: new CodeColumn(),
       formings: new Dictionary(),
       standsFor: new Map(),
-      factors: lotFactors.map((factor) => ({ factor, codes: new CodeColumn(), names: new Dictionary() })),
+      factors: lotFactors.map((factor) => ({
+        factor,
+        codes: new CodeColumn(),
+        names: new Dictionary(),
+      })),
       firings: { names: new Dictionary(), studio: [], kind: [], studios: new Dictionary() },
-      firingFactors: firingFactors.map((factor) => ({ factor, codes: [], names: new Dictionary() })),
+      firingFactors: firingFactors.map((factor) => ({
+        factor,
+        codes: [],
+        names: new Dictionary(),
+      })),
       lossRow: new NumberColumn(),
       lossPieces: new NumberColumn(),
       lossBefore: new NumberColumn(),
@@ -84,7 +92,9 @@ export class StudyTableBuilder {
     const { raw } = this
     // All that may throw comes before the first push: a refused row leaves no trace.
     const firing = this.firingOf(row)
-    const codes = raw.factors.map(({ factor, names }) => levelCode(factor, row.levels[factor.id], names))
+    const codes = raw.factors.map(({ factor, names }) =>
+      levelCode(factor, row.levels[factor.id], names),
+    )
     const taken = eventPieces(row)
     const index = raw.firing.length
     raw.firing.push(firing)
@@ -142,11 +152,16 @@ export function levelsOfKey(key: string): string[] {
   return key.split(SEPARATOR)
 }
 
-function levelCode(factor: StudyFactor, level: StudyRow['levels'][string], names: Dictionary): number {
+function levelCode(
+  factor: StudyFactor,
+  level: StudyRow['levels'][string],
+  names: Dictionary,
+): number {
   if (level === null || level === undefined || level === '') return 0
   if (typeof level === 'string') return names.code(level)
   if (level.length === 0) return 0
-  if (level.length > 1 && !factor.several) throw new RangeError(`A lot holds one level of ${factor.id}, not several`)
+  if (level.length > 1 && !factor.several)
+    throw new RangeError(`A lot holds one level of ${factor.id}, not several`)
   return names.code([...new Set(level)].sort().join(SEPARATOR))
 }
 
@@ -167,13 +182,22 @@ function eventPieces(row: StudyRow): { offered: number; fired: number } {
 }
 
 function requirePossible(row: StudyRow): void {
-  if (!FIRING_KINDS.includes(row.kind)) throw new RangeError(`Firing ${row.firing}: unknown kind ${String(row.kind)}`)
+  if (!FIRING_KINDS.includes(row.kind))
+    throw new RangeError(`Firing ${row.firing}: unknown kind ${String(row.kind)}`)
   const lost = row.losses.reduce((total, loss) => total + loss.pieces, 0)
-  const counts = [row.pieces, row.turnedAway, row.notLookedAt, row.refireCount, ...row.losses.map((loss) => loss.pieces)]
+  const counts = [
+    row.pieces,
+    row.turnedAway,
+    row.notLookedAt,
+    row.refireCount,
+    ...row.losses.map((loss) => loss.pieces),
+  ]
   if (!counts.every((count) => Number.isInteger(count) && count >= 0))
     throw new RangeError(`Firing ${row.firing}: counts must be whole numbers of 0 or more`)
   if (row.turnedAway + row.notLookedAt > row.pieces || lost + row.notLookedAt > row.pieces)
-    throw new RangeError(`Firing ${row.firing}: a lot of ${row.pieces} pieces cannot have lost more than that`)
+    throw new RangeError(
+      `Firing ${row.firing}: a lot of ${row.pieces} pieces cannot have lost more than that`,
+    )
   if (row.standsFor !== undefined && !(row.standsFor > 0 && Number.isFinite(row.standsFor)))
     throw new RangeError(`Firing ${row.firing}: a piece must stand for a positive number of pieces`)
 }

@@ -6,11 +6,17 @@ import type { FiringKind } from '../shared/kinds.js'
 export type StudyFactor = Pick<Factor, 'id' | 'of' | 'several' | 'applies'>
 
 /** What the study needs of a fault node: its place in the tree and its at-risk rule. */
-export interface StudyFault
-  extends Pick<
-    FaultRule,
-    'id' | 'seenIn' | 'needsGlaze' | 'needsJoint' | 'needsRefire' | 'forming' | 'glazeFit' | 'seenBeforeFiring'
-  > {
+export interface StudyFault extends Pick<
+  FaultRule,
+  | 'id'
+  | 'seenIn'
+  | 'needsGlaze'
+  | 'needsJoint'
+  | 'needsRefire'
+  | 'forming'
+  | 'glazeFit'
+  | 'seenBeforeFiring'
+> {
   parent: string | null
 }
 

@@ -25,7 +25,8 @@ async function readTable(order: StudyOrder): Promise<{ table: StudyTable; waterm
     for await (const lot of snapshot.rows()) {
       builder.push(lot)
       read += 1
-      if (read % REPORT_EVERY === 0) post({ type: 'progress', percent: (READ * read) / snapshot.lots })
+      if (read % REPORT_EVERY === 0)
+        post({ type: 'progress', percent: (READ * read) / snapshot.lots })
     }
     return { table: builder.build(), watermark: snapshot.watermark }
   } finally {
@@ -37,10 +38,13 @@ async function readTable(order: StudyOrder): Promise<{ table: StudyTable; waterm
 function studiosToStudy({ firings }: StudyTable, least: number): string[] {
   const counts = new Map<string, number>()
   for (const code of firings.studio) {
-    const studio = firings.studios[code - 1]
+    const studio = firings.studios[code]
     if (studio !== undefined) counts.set(studio, (counts.get(studio) ?? 0) + 1)
   }
-  return [...counts].filter(([, count]) => count >= least).sort(([, a], [, b]) => b - a).map(([studio]) => studio)
+  return [...counts]
+    .filter(([, count]) => count >= least)
+    .sort(([, a], [, b]) => b - a)
+    .map(([studio]) => studio)
 }
 
 const order = workerData as StudyOrder
@@ -50,7 +54,10 @@ const options = { faults: STUDY_FAULTS, seed: order.seed, level: order.level, ke
 const studios: (string | null)[] = [null, ...studiosToStudy(table, order.leastFirings)]
 const scopes: ScopeResult[] = []
 for (const studio of studios) {
-  scopes.push({ studioId: studio === null ? null : Number(studio), result: studyLots(table, { ...options, ...(studio !== null && { studio }) }) })
+  scopes.push({
+    studioId: studio === null ? null : Number(studio),
+    result: studyLots(table, { ...options, ...(studio !== null && { studio }) }),
+  })
   post({ type: 'progress', percent: READ + ((100 - READ) * scopes.length) / studios.length })
 }
 post({ type: 'done', watermark, scopes })
