@@ -26,24 +26,27 @@ const PARTS = [
 /** The launcher itself is not built, but for the rules that server/config.ts imports. */
 const isSource = (file) => !/\/server\/launch(\.mjs|\/(?!settings))/.test(file)
 
-/** @param {{ only?: 'client' | 'server' }} [options] */
-export async function buildStale({ only } = {}) {
+/** @param {'client' | 'server'} [only] */
+export async function buildStale(lock, only) {
   for (const part of PARTS.filter(({ name }) => !only || name === only)) {
     const stamp = at(`dist/${part.name}.stamp`)
     const files = filesBelow([...part.sources, 'package-lock.json'].map((place) => at(place)))
     const due = hashOf(files.filter(isSource), process.versions.node)
     const whole = existsSync(at(`dist/${part.name}`, part.proof))
     if (whole && textOf(stamp) === due) continue
-    await step(`Building the ${part.name}`, `Built the ${part.name}`, () => build(part, stamp, due))
+    await step(`Building the ${part.name}`, `Built the ${part.name}`, () =>
+      build(part, stamp, due, lock),
+    )
   }
 }
 
-async function build(part, stamp, due) {
+async function build(part, stamp, due, lock) {
   const fresh = at(`dist/${part.name}.new`)
   const place = at(`dist/${part.name}`)
   rmSync(fresh, { recursive: true, force: true })
   await node(part.build(fresh), {
     cwd: at(),
+    lock,
     env: { ...process.env, NODE_ENV: 'production' },
     failure: `The ${part.name} could not be built.`,
   })

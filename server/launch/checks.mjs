@@ -72,9 +72,9 @@ export async function typesOnly() {
 }
 
 export async function buildOnly() {
-  await alone(async () => {
-    await installPackages()
-    await buildStale()
+  await alone(async (project) => {
+    await installPackages(project)
+    await buildStale(project)
   })
   say('The build in dist is up to date')
   await end(0)

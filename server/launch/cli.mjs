@@ -31,9 +31,9 @@ export async function cli(settings, [name, ...args]) {
   if (!tools.includes(name)) {
     throw new Stop(`There is no tool "${name ?? ''}"; there are ${tools.join(', ')}.`)
   }
-  await alone(async () => {
-    await installPackages()
-    if (name === 'sizes') await buildStale({ only: 'client' })
+  await alone(async (project) => {
+    await installPackages(project)
+    if (name === 'sizes') await buildStale(project, 'client')
   })
   if (!needsDatabase(name, args)) return end(await runTool(name, args, process.env))
   const database = await reachDatabase(settings, name)

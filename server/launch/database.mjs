@@ -44,11 +44,11 @@ const serviceUser = () => (isRoot() ? 'mysql' : undefined)
  * @param {string} options.dataDir
  * @param {number} options.bufferMb
  * @param {'due' | 'off'} options.demo what a new database gets
- * @param {import('./lock.mjs').Lock} options.lock told the server's pid and its folder for sockets
+ * @param {import('./lock.mjs').Lock} options.lock told the programs and the folder for sockets
  * @returns {Promise<{ url: string, state: State, stop(): Promise<void>, remove(): void }>}
  */
 export async function openDatabase({ dataDir, bufferMb, demo, lock }) {
-  const state = (await usable(dataDir)) ?? (await setUp(dataDir, demo))
+  const state = (await usable(dataDir)) ?? (await setUp(dataDir, demo, lock))
   const runFolder = await makeRunFolder()
   lock.tell({ runFolder })
   const removeRunFolder = () => rmSync(runFolder, { recursive: true, force: true })
@@ -64,7 +64,7 @@ export async function openDatabase({ dataDir, bufferMb, demo, lock }) {
         patience: STOP_MS,
         stdio: 'ignore',
       }),
-    onStart: ({ pid, started }) => lock.tell({ database: { pid, started } }),
+    onStart: (program) => lock.note(program),
     isReady: () => greetsAsMariadb(state.port),
     patience: START_MS,
     lastWords: () => textOf(log) ?? '',
@@ -146,14 +146,14 @@ async function usable(dataDir) {
 /** Where the data is or will be, as noted before the set-up. */
 const dataFolder = (dataDir) => textOf(join(dataDir, 'database-folder'))?.trim()
 
-async function setUp(dataDir, demo) {
+async function setUp(dataDir, demo, lock) {
   return step('Setting up the database', 'Database set up', async () => {
     const folder = dataFolder(dataDir) ?? (await chooseFolder(dataDir))
     const password = newPassword()
     const half = `${folder}.new`
     rmSync(half, { recursive: true, force: true })
     makeOwned(half)
-    await installSystemTables(half, password)
+    await installSystemTables(half, password, lock)
     const state = new State(dataDir, { folder, password, demo })
     state.change({ port: await freePort() })
     renameSync(half, folder)
@@ -198,7 +198,7 @@ function mysqlIds() {
   return { uid: Number(uid), gid: Number(gid) }
 }
 
-async function installSystemTables(folder, password) {
+async function installSystemTables(folder, password, lock) {
   const init = join(folder, 'set-up.sql')
   writeFileSync(init, setUpSql(password), { mode: 0o600 })
   give(init)
@@ -215,7 +215,7 @@ async function installSystemTables(folder, password) {
         `--auth-root-socket-user=${userInfo().username}`,
         `--extra-file=${init}`,
       ],
-      { failure: 'The database could not be set up.' },
+      { lock, failure: 'The database could not be set up.' },
     )
   } finally {
     rmSync(init, { force: true })

@@ -20,20 +20,20 @@ export function checkNode() {
   throw new Stop(`Node ${wanted} or later is needed; this is Node ${process.versions.node}.`)
 }
 
-/** Does `work` while no other launcher of this checkout installs or builds. */
+/** Does `work(lock)` while no other launcher of this checkout installs or builds. */
 export async function alone(work) {
-  const { lock } = await waitForLock(projectLock, {}, ({ pid }) =>
+  const lock = await waitForLock(projectLock, {}, ({ pid }) =>
     say(`Waiting for process ${pid}, which installs or builds in this folder ...`),
   )
   try {
-    return await work()
+    return await work(lock)
   } finally {
     lock.release()
   }
 }
 
 /** `npm ci` when the lock file, .npmrc or the Node version changed since the last one. */
-export async function installPackages() {
+export async function installPackages(lock) {
   const due = hashOf([at('package-lock.json'), at('.npmrc')], process.versions.node)
   const done = textOf(STAMP)
   if (done === due) return
@@ -41,6 +41,7 @@ export async function installPackages() {
   await step('Installing the packages (about a minute)', 'Packages installed', () =>
     run(...npm(['ci', '--include=dev', '--loglevel=error', '--no-audit', '--no-fund']), {
       cwd: at(),
+      lock,
       failure: 'The packages could not be installed (npm ci).',
     }),
   )

@@ -1,6 +1,6 @@
 import { randomBytes } from 'node:crypto'
-import { readdirSync, readFileSync } from 'node:fs'
-import { until } from './programs.mjs'
+import { readFileSync } from 'node:fs'
+import { processes, untilGone } from './programs.mjs'
 
 /**
  * Programs that start others (a browser, say) do not always take them along when they end. A test run
@@ -16,26 +16,7 @@ export const newMark = () => ({ [NAME]: randomBytes(12).toString('hex') })
 /** Ends whatever still carries the mark. */
 export async function endMarked(mark) {
   const needle = `${NAME}=${mark[NAME]}`
-  const gone = () => marked(needle).length === 0
-  if (await until(gone, GRACE_MS)) return
-  for (const pid of marked(needle)) {
-    try {
-      process.kill(pid, 'SIGKILL')
-    } catch {
-      // Ended meanwhile.
-    }
-  }
-  await until(gone, GRACE_MS)
-}
-
-function marked(needle) {
-  try {
-    return readdirSync('/proc')
-      .filter((name) => /^\d+$/.test(name) && carries(name, needle))
-      .map(Number)
-  } catch {
-    return []
-  }
+  await untilGone(() => processes().filter((pid) => carries(pid, needle)), GRACE_MS)
 }
 
 function carries(pid, needle) {

@@ -1,7 +1,7 @@
 import { randomBytes } from 'node:crypto'
 import { linkSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { atEnd } from './ending.mjs'
-import { isAlive, pause, startOf } from './programs.mjs'
+import { isAlive, pause, sessionOf, startOf, untilGone } from './programs.mjs'
 
 /**
  * Lock files. The file holds who has the lock as JSON: `pid` and `started` (so that a pid used again
@@ -10,6 +10,7 @@ import { isAlive, pause, startOf } from './programs.mjs'
  */
 
 const POLL_MS = 250
+const LEFTOVER_MS = 30_000
 
 /** @returns {Record<string, any> | null} what the file says; null when it is missing or unreadable */
 export function readLock(file) {
@@ -82,11 +83,23 @@ function takeAway(file) {
   return isAlive(left) ? null : left
 }
 
+/**
+ * Waits until the programs of a holder that was killed have ended. They are told to by the system when
+ * it dies; what they started themselves may not be.
+ *
+ * @param {Record<string, any> | null} stale
+ */
+export async function clearLeft(stale) {
+  const leaders = stale?.programs ?? []
+  await untilGone(() => leaders.flatMap(sessionOf), LEFTOVER_MS)
+}
+
 /** Waits for the lock; `waiting` is told once who has it. */
 export async function waitForLock(file, facts, waiting) {
   for (let told = false; ; told = true) {
     const got = tryLock(file, facts)
-    if (got.lock) return got
+    if (got.lock) await clearLeft(got.stale)
+    if (got.lock) return got.lock
     if (!told) waiting(got.holder)
     await pause(POLL_MS)
   }
@@ -107,6 +120,12 @@ export class Lock {
   tell(facts) {
     Object.assign(this.#facts, facts)
     if (this.stillMine()) writeWhole(this.#file, JSON.stringify(this.#facts))
+  }
+
+  /** Notes a program, so that the next holder can wait for its end should we be killed. */
+  note({ pid, started }) {
+    const programs = (this.#facts.programs ?? []).filter(isAlive)
+    this.tell({ programs: [...programs, { pid, started }] })
   }
 
   stillMine() {

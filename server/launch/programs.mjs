@@ -1,5 +1,5 @@
 import { spawn } from 'node:child_process'
-import { accessSync, constants, existsSync, readFileSync } from 'node:fs'
+import { accessSync, constants, existsSync, readdirSync, readFileSync } from 'node:fs'
 import { delimiter, join } from 'node:path'
 import { atEnd, isEnding } from './ending.mjs'
 import { gist, Stop } from './say.mjs'
@@ -29,12 +29,24 @@ export function find(name) {
  * good. Null when no such process lives (a zombie does not).
  */
 export function startOf(pid) {
+  const fields = statOf(pid)
+  if (fields) return fields[START]
+  return existsSync('/proc/self') ? null : startWithoutProc(pid)
+}
+
+/** Places in /proc/PID/stat, counted from the state, which stands behind the name. */
+const STATE = 0
+const SESSION = 3
+const START = 19
+
+/** @returns {string[] | null} what the system says of a living process */
+function statOf(pid) {
   try {
     const stat = readFileSync(`/proc/${pid}/stat`, 'utf8')
     const fields = stat.slice(stat.lastIndexOf(')') + 2).split(' ')
-    return fields[0] === 'Z' || fields[0] === 'X' ? null : fields[19]
+    return 'ZX'.includes(fields[STATE]) ? null : fields
   } catch {
-    return existsSync('/proc/self') ? null : startWithoutProc(pid)
+    return null
   }
 }
 
@@ -50,6 +62,39 @@ function startWithoutProc(pid) {
 
 /** @param {{ pid: number, started: string | null } | null | undefined} who */
 export const isAlive = (who) => Boolean(who?.started) && startOf(who.pid) === who.started
+
+/**
+ * A program that `launch` started, with all that it started itself: they share its session, whoever of
+ * them still lives. Nobody's pid is used again while the session has members; a leader with another
+ * start means that it has none.
+ */
+export function sessionOf(leader) {
+  const start = startOf(leader.pid)
+  if (start !== null && start !== leader.started) return []
+  return processes().filter((pid) => statOf(pid)?.[SESSION] === String(leader.pid))
+}
+
+/** The pids of all processes that /proc shows. */
+export function processes() {
+  if (!existsSync('/proc/self')) return []
+  return readdirSync('/proc')
+    .filter((name) => /^\d+$/.test(name))
+    .map(Number)
+}
+
+/** Waits until the processes that `list` finds have ended; kills them when they take too long. */
+export async function untilGone(list, patience) {
+  const gone = () => list().length === 0
+  if (await until(gone, patience)) return
+  for (const pid of list()) {
+    try {
+      process.kill(pid, 'SIGKILL')
+    } catch {
+      // Ended meanwhile.
+    }
+  }
+  await until(gone, patience)
+}
 
 export const pause = (ms) => new Promise((done) => setTimeout(done, ms))
 
@@ -129,8 +174,9 @@ export function launch(command, args, options = {}) {
  * @param {Parameters<typeof launch>[2] & { failure?: string, check?: boolean }} [options] `failure` is
  *   the line for the person when it fails; with `check: false` a failure is returned, not thrown
  */
-export async function run(command, args, { failure, check = true, ...options } = {}) {
+export async function run(command, args, { failure, check = true, lock, ...options } = {}) {
   const program = launch(command, args, options)
+  lock?.note(program)
   let output = ''
   const keep = (chunk) => {
     output = (output + chunk).slice(-KEPT_OUTPUT)

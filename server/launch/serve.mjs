@@ -107,7 +107,7 @@ export async function serve({ env, lock, onHopeless }) {
       log.follow(program.child)
       return program
     },
-    onStart: ({ pid, started }) => lock.tell({ server: { pid, started } }),
+    onStart: (program) => lock.note(program),
     isReady: () => isReady(address),
     patience: READY_MS,
     lastWords: () => log.recent().join('\n'),

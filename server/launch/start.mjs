@@ -4,8 +4,7 @@ import { buildStale } from './build.mjs'
 import { openDatabase } from './database.mjs'
 import { atEnd, end } from './ending.mjs'
 import { alone, installPackages, needMariadb } from './install.mjs'
-import { tryLock } from './lock.mjs'
-import { isAlive, until } from './programs.mjs'
+import { clearLeft, tryLock } from './lock.mjs'
 import { say, step, Stop } from './say.mjs'
 import {
   choosePort,
@@ -18,8 +17,6 @@ import {
   sessionSecret,
 } from './serve.mjs'
 import { addressOf } from './settings.mjs'
-
-const LEFTOVER_MS = 30_000
 
 export const lockFile = (dataDir) => join(dataDir, 'launch.lock')
 
@@ -40,13 +37,10 @@ export async function takeDataDir(dataDir, facts) {
   return got
 }
 
-/** Ends what a killed launcher started and removes its folder for sockets. */
-export async function clearUp({ server, database, runFolder }) {
-  const left = [server, database].filter(isAlive)
-  if (left.length > 0) say('Waiting for what the last run left to end ...')
-  await until(() => !left.some(isAlive), LEFTOVER_MS)
-  for (const { pid } of left.filter(isAlive)) process.kill(pid, 'SIGKILL')
-  await until(() => !left.some(isAlive), LEFTOVER_MS)
+/** Waits for what a killed launcher left to end, and removes its folder for sockets. */
+async function clearUp(stale) {
+  await clearLeft(stale)
+  const { runFolder } = stale
   if (/\/duntless-db-\w+$/.test(runFolder ?? ''))
     rmSync(runFolder, { recursive: true, force: true })
 }
@@ -71,9 +65,9 @@ export async function start(settings) {
   sessionSecret(settings)
   const address = settings.baseUrlGiven ? settings.baseUrl : addressOf(settings.host, port)
   lock.tell({ host: settings.host, port, address })
-  await alone(async () => {
-    await installPackages()
-    await buildStale()
+  await alone(async (project) => {
+    await installPackages(project)
+    await buildStale(project)
   })
   const opened = await openOrGiven(settings, lock, settings.demo === 'off' ? 'off' : 'due')
   const env = serverEnv({ settings, port, databaseUrl: opened.url, demo: false })

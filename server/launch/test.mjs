@@ -1,6 +1,6 @@
-import { existsSync, mkdirSync, mkdtempSync, readdirSync, rmSync } from 'node:fs'
+import { chmodSync, existsSync, mkdirSync, mkdtempSync, readdirSync, rmSync } from 'node:fs'
 import { tmpdir } from 'node:os'
-import { basename, join } from 'node:path'
+import { basename, join, resolve } from 'node:path'
 import { KINDS, readTestArguments } from './arguments.mjs'
 import { buildStale } from './build.mjs'
 import { lint, typeProjects, types } from './checks.mjs'
@@ -10,11 +10,11 @@ import { openDatabase } from './database.mjs'
 import { atEnd, end, isEnding } from './ending.mjs'
 import { alone, chromium, installPackages, needChromium, needMariadb } from './install.mjs'
 import { endMarked, newMark } from './leftovers.mjs'
-import { tryLock } from './lock.mjs'
+import { readLock, tryLock } from './lock.mjs'
 import { freePort } from './ports.mjs'
 import { at, packageScript, textOf } from './places.mjs'
-import { launch, node } from './programs.mjs'
-import { complain, lastLines, say, step, Stop } from './say.mjs'
+import { isAlive, launch, node } from './programs.mjs'
+import { complain, gist, say, step, Stop } from './say.mjs'
 import { makeDemoBuilt, migrateBuilt, serve, serverEnv } from './serve.mjs'
 import { readSettings } from './settings.mjs'
 
@@ -29,7 +29,9 @@ const BUILT_KINDS = ['sizes', 'e2e']
 const PRODUCT_VARIABLES =
   /^(PORT|HOST|DATA_DIR|DATABASE_URL|DB_BUFFER_MB|BASE_URL|SESSION_SECRET|DEMO|TRUST_PROXY|LOG_LEVEL|NODE_ENV|API_URL)$/
 const BUFFER_MB = 128
-const SHOWN_LINES = 80
+const PREFIX = 'duntless-test-'
+const OWNER = 'run.lock'
+const SHOWN_LINES = 240
 
 export async function test(args) {
   const { kinds, keep, extra } = readTestArguments(args)
@@ -66,7 +68,11 @@ function summary(counts) {
  * it, and a mark by which programs that outlive their parents are found and ended.
  */
 function makeBench(keep) {
-  const folder = mkdtempSync(join(tmpdir(), 'duntless-test-'))
+  removeKilledRuns()
+  const folder = mkdtempSync(join(tmpdir(), PREFIX))
+  // The database's user must be able to pass through.
+  chmodSync(folder, 0o711)
+  tryLock(join(folder, OWNER))
   const mark = newMark()
   const closing = []
   const clear = async () => {
@@ -96,11 +102,23 @@ function makeBench(keep) {
   return { folder, inside, env, keep, clear, close: (duty) => closing.push(duty) }
 }
 
+/** Clears what runs left that were killed before they could. */
+function removeKilledRuns() {
+  for (const name of readdirSync(tmpdir()).filter((each) => each.startsWith(PREFIX))) {
+    const folder = join(tmpdir(), name)
+    const owner = readLock(join(folder, OWNER))
+    if (!owner || isAlive(owner)) continue
+    const runFolder = readLock(join(folder, 'data/launch.lock'))?.runFolder
+    if (runFolder) rmSync(runFolder, { recursive: true, force: true })
+    rmSync(folder, { recursive: true, force: true })
+  }
+}
+
 async function runKinds(kinds, extra, bench) {
   const needs = (some) => kinds.some((kind) => some.includes(kind))
-  await alone(async () => {
-    await installPackages()
-    if (needs(BUILT_KINDS)) await buildStale()
+  await alone(async (project) => {
+    await installPackages(project)
+    if (needs(BUILT_KINDS)) await buildStale(project)
   })
   if (kinds.includes('e2e')) await needChromium()
   const database = needs(DATABASE_KINDS) ? await openTemporary(bench) : null
@@ -131,7 +149,7 @@ async function openTemporary(bench) {
 const one = (kind, ok) => ({ kind, passed: ok ? 1 : 0, failed: ok ? 0 : 1, skipped: 0 })
 
 function showFailure(what, output) {
-  complain(`\n--- ${what} ---\n${lastLines(output, SHOWN_LINES)}\n`)
+  complain(`\n--- ${what} ---\n${gist(output, SHOWN_LINES)}\n`)
 }
 
 /** Lint, types and sizes, one after the other, beside the tests. */
@@ -191,7 +209,7 @@ async function runPlaywright(extra, bench, database) {
     E2E_BASE_URL: server.address,
     E2E_DATABASE_URL: database.url,
     E2E_REPORT: file,
-    E2E_OUTPUT: bench.keep ?? bench.inside('e2e'),
+    E2E_OUTPUT: bench.keep ? resolve(bench.keep) : bench.inside('e2e'),
   }
   const script = [packageScript.playwright, 'test', '--config', '.config/playwright.config.ts']
   const { code, output } = await step('Testing in the browser', 'Tested in the browser', () =>
@@ -199,7 +217,10 @@ async function runPlaywright(extra, bench, database) {
   )
   await server.stop()
   const count = playwrightCount(JSON.parse(textOf(file) ?? '{}'))
-  if (code !== 0) showFailure('browser tests', output)
+  if (code !== 0) {
+    showFailure('browser tests', output)
+    if (!bench.keep) complain('For pictures of the failures: npm test -- --only e2e --keep FOLDER')
+  }
   const [checked] = requireTests(['e2e'], [count])
   return [code !== 0 && checked.failed === 0 ? { ...checked, failed: 1 } : checked]
 }
