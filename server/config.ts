@@ -15,10 +15,9 @@ import { readSettings, SettingError, type LogLevel } from './launch/settings.mjs
  *   `LOG_LEVEL`, `NODE_ENV` (`production` when built)
  * - `DEMO` `on` or `off`, always set
  *
- * Before the server the launcher runs `dist/server/cli/migrate.js` and, with DEMO=on on a new private
- * database, `dist/server/cli/demo.js --into-database`, with the same variables. The server must stand
- * on its own without those two: it runs the migrations and, with DEMO=on and no network in the
- * database, makes the demo, then it listens.
+ * Before the server the launcher runs `dist/server/cli/migrate.js` and, with DEMO=on,
+ * `dist/server/cli/demo.js --into-database --if-empty`, with the same variables. The server runs the
+ * migrations by itself too, since it may be started without a launcher; it makes no demo.
  *
  * The server then writes one line `{"ready":true,"address":"http://127.0.0.1:3000"}` to stdout. The
  * launcher counts it as started when `GET /readyz` answers 200. SIGTERM and SIGINT end it: stop

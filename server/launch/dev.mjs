@@ -5,10 +5,10 @@ import { freePort, isFree } from './ports.mjs'
 import { at, packageScript } from './places.mjs'
 import { launch, node, until } from './programs.mjs'
 import { say, step, Stop } from './say.mjs'
-import { choosePort, isReady, prepareDemo, serverEnv } from './serve.mjs'
+import { choosePort, INTO_EMPTY, isReady, prepareDemo, serverEnv } from './serve.mjs'
 import { addressOf } from './settings.mjs'
 import { supervise } from './supervise.mjs'
-import { migrateSource, toolArgs, toolNames } from './cli.mjs'
+import { migrateSource, toolArgs } from './cli.mjs'
 
 const VITE_PORT = 5173
 const READY_MS = 120_000
@@ -45,9 +45,8 @@ export async function dev(settings) {
 }
 
 async function makeDemo(env) {
-  if (!toolNames().includes('demo')) return
   await step('Making the demo networks', 'Demo networks made', () =>
-    node(toolArgs('demo', ['--into-database']), {
+    node(toolArgs('demo', INTO_EMPTY), {
       cwd: at(),
       env,
       failure: 'The demo could not be made.',

@@ -1,5 +1,5 @@
 import { randomBytes } from 'node:crypto'
-import { existsSync, renameSync, statSync, writeSync, openSync, closeSync } from 'node:fs'
+import { renameSync, statSync, writeSync, openSync, closeSync } from 'node:fs'
 import { join } from 'node:path'
 import { createInterface } from 'node:readline'
 import { writeWhole } from './lock.mjs'
@@ -17,6 +17,9 @@ const STOP_MS = 10_000
 const LOG_BYTES = 10_000_000
 const WARN = 40
 const EXIT_CONFIG = 78
+
+/** The demo never joins networks that are in use. */
+export const INTO_EMPTY = ['--into-database', '--if-empty']
 
 /** The secret that signs sessions: given, or made once and kept in DATA_DIR. */
 export function sessionSecret(settings) {
@@ -82,9 +85,8 @@ export async function prepareDemo({ settings, state, makeDemo }) {
 
 export async function makeDemoBuilt(env) {
   const tool = at('dist/server/cli/demo.js')
-  if (!existsSync(tool)) return
   await step('Making the demo networks', 'Demo networks made', () =>
-    node([tool, '--into-database'], { cwd: at(), env, failure: 'The demo could not be made.' }),
+    node([tool, ...INTO_EMPTY], { cwd: at(), env, failure: 'The demo could not be made.' }),
   )
 }
 
