@@ -10,6 +10,7 @@ import { migrate } from './database/migrate.js'
 import type { Deps } from './deps.js'
 import { addressOf } from './launch/settings.mjs'
 import { createLogger } from './logger.js'
+import { startScheduler } from './scheduling/index.js'
 
 /** The server process; `server/config.ts` tells what it is given and what it owes the launcher. */
 
@@ -90,8 +91,9 @@ async function main(): Promise<void> {
   const { app, close: closeApp } = createApp(deps)
   const server = createServer(app)
   await listen(server, config)
+  const scheduler = startScheduler(deps)
   stopOnSignal(async () => {
-    await close(server)
+    await Promise.all([close(server), scheduler.stop()])
     closeApp()
     await sequelize.close()
   }, deps)
