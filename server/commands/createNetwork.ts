@@ -34,7 +34,8 @@ export async function createNetwork(
   try {
     const network = await Network.create({ currency: 'EUR', ...input, uid: v7() }, { transaction })
     await seedFixedLevels(network.id, transaction)
-    return network
+    // With what the database put in where the input said nothing.
+    return await network.reload({ transaction })
   } catch (error) {
     if (!isDuplicate(error)) throw error
     const fields = { slug: 'Another network has this short name.' }

@@ -30,6 +30,11 @@ function tooMany(until: Date, now: Date): AppError {
   })
 }
 
+function wrongGuess(): AppError {
+  const message = 'That e-mail address and password do not go together.'
+  return new AppError('sign-in', message, { fields: { password: message } })
+}
+
 async function count(subject: string, limit: number, { sequelize, clock }: Deps): Promise<void> {
   const now = clock.now()
   const until = await countAttempt(sequelize, { subject, limit, now })
@@ -49,7 +54,7 @@ export async function verifyPassword({ email, password, address }: Credentials, 
   const found = await User.findOne({ where: { email: normalEmail(email) } })
   const matches = await passwordMatches(password, found?.passwordHash ?? null, deps)
   const user = matches && found ? await findUserForSession(found.id) : null
-  if (!user) throw new AppError('sign-in', 'That e-mail address and password do not go together.')
+  if (!user) throw wrongGuess()
   await clearAttempts(deps.sequelize, subjects)
   return user
 }

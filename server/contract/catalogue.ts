@@ -61,7 +61,13 @@ export const kilnInput = z.object({
 })
 
 export const CLAY_FAMILIES = ['earthenware', 'stoneware', 'porcelain', 'raku'] as const
-export const CLASS_LEVELS = ['first-course', 'under-a-year', 'one-to-three', 'more', 'staff'] as const
+export const CLASS_LEVELS = [
+  'first-course',
+  'under-a-year',
+  'one-to-three',
+  'more',
+  'staff',
+] as const
 
 /** What a level says beside its name; which keys count depends on its factor. */
 export const levelAttributes = z.object({
@@ -80,6 +86,25 @@ export const levelAttributes = z.object({
   /** glaze: tested for use with food, as the studio says; we certify nothing */
   foodUse: z.enum(['not-tested', 'tested', 'not-for-food']).nullable().optional(),
 })
+export type LevelAttributes = z.output<typeof levelAttributes>
+
+const PLAIN = ['description'] as const
+const ATTRIBUTES: Readonly<Record<string, readonly (keyof LevelAttributes)[]>> = {
+  clay_body: ['family', 'cone', 'description'],
+  glaze: ['cone', 'foodUse', 'description'],
+  programme: ['kind', 'cone', 'description'],
+  class: ['classLevel', 'startsOn', 'endsOn', 'description'],
+}
+/** The keys that count for levels of a factor, in the order of its form; others are dropped. */
+export function attributesOf(factor: string): readonly (keyof LevelAttributes)[] {
+  return ATTRIBUTES[factor] ?? PLAIN
+}
+
+/** Factors that are practices: of each, one level a list may be the reference. */
+export function isPractice(factor: string): boolean {
+  return factor.endsWith('_practice')
+}
+
 export const level = z.object({
   uid,
   factor: z.string(),
@@ -96,7 +121,7 @@ export const level = z.object({
 })
 export type LevelView = z.infer<typeof level>
 
-/** GET /levels?factor=a,b&archived=true: the settings lists */
+/** GET /levels?factor=a,b&archived=true: the settings lists; with `archived` the archived ones too */
 export const levelsInput = z.object({
   factor: z.string().transform((list) => list.split(',').filter(Boolean)),
   archived: z.enum(['true', 'false']).default('false'),
@@ -125,7 +150,15 @@ export const catalogueLevel = z.object({
 })
 export const catalogueOutput = z.object({
   studios: z.array(
-    z.object({ uid, slug: z.string(), name: z.string(), timeZone: z.string(), temperatureUnit: z.enum(['C', 'F']), abilities }),
+    z.object({
+      uid,
+      slug: z.string(),
+      name: z.string(),
+      timeZone: z.string(),
+      temperatureUnit: z.enum(['C', 'F']),
+      archived: z.boolean(),
+      abilities,
+    }),
   ),
   kilns: z.array(
     z.object({

@@ -66,17 +66,21 @@ const newPassword = z
   .min(12, 'At least 12 characters: a few words are fine.')
   .max(200, 'At most 200 characters.')
 
-/** GET /api/links/:token */
-export const linkOutput = z.object({ name: z.string(), email: z.string(), networkName: z.string().nullable() })
-/** POST /api/links/:token */
+/** GET /api/links/:token; `networkName` is null where the link is for a password alone */
+export const linkOutput = z.object({
+  name: z.string(),
+  email: z.string(),
+  networkName: z.string().nullable(),
+})
+/** POST /api/links/:token: answers the session, signed in */
 export const useLinkInput = z.object({ password: newPassword })
 
-/** PATCH /api/account */
+/** PATCH /api/account: answers the session */
 export const accountInput = z.object({
   name: z.string().trim().min(1, 'Enter your name.').max(120),
   preferences,
 })
-/** PUT /api/account/password */
+/** PUT /api/account/password: this session stays, all others end */
 export const changePasswordInput = z.object({
   current: z.string().min(1, 'Enter your present password.').max(1000),
   password: newPassword,

@@ -58,9 +58,9 @@ export function createAuthentication(verify: Verify): {
             req.logIn(user, (failed?: Error | null) => (failed ? reject(failed) : resolve(user)))
           },
         ) as RequestHandler
-        void authenticate(req, res, (error?: Error) =>
-          reject(error ?? new Error('No answer of passport')),
-        )
+        void authenticate(req, res, (error?: unknown) => {
+          reject(error instanceof Error ? error : new Error('passport gave no answer'))
+        })
       }),
   }
 }

@@ -1,4 +1,4 @@
-import type { ErrorRequestHandler, RequestHandler } from 'express'
+import type { ErrorRequestHandler, Request, RequestHandler } from 'express'
 import type { Logger } from '../logger.js'
 import { AppError, notFound } from '../errors.js'
 import type { ErrorBody } from '../contract/common.js'
@@ -17,13 +17,18 @@ function fromParser(error: unknown): AppError | null {
   return null
 }
 
+/** The pattern of the path where a route was reached: the path itself may hold the token of a link. */
+function pathOf(req: Request): string {
+  return (req.route as { path?: string } | undefined)?.path ?? req.path
+}
+
 /** One shape for every error; what we did not foresee is logged whole and told as little as possible. */
 export function errorHandler(logger: Logger): ErrorRequestHandler {
   return (error: unknown, req, res, next) => {
     if (res.headersSent) return next(error)
     const known = error instanceof AppError ? error : fromParser(error)
     if (!known)
-      logger.error({ err: error, requestId: req.requestId, path: req.path }, 'request failed')
+      logger.error({ err: error, requestId: req.requestId, path: pathOf(req) }, 'request failed')
     const shown =
       known ?? new AppError('unexpected', 'Something went wrong on our side. It has been noted.')
     const body: ErrorBody = {

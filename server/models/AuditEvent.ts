@@ -1,9 +1,17 @@
 import { DataTypes, Model } from 'sequelize'
-import type { CreationOptional, InferAttributes, InferCreationAttributes, Sequelize } from 'sequelize'
+import type {
+  CreationOptional,
+  InferAttributes,
+  InferCreationAttributes,
+  Sequelize,
+} from 'sequelize'
 import { guardTenant } from './tenantGuard.js'
 
 /** Who changed what, before and after. */
-export class AuditEvent extends Model<InferAttributes<AuditEvent>, InferCreationAttributes<AuditEvent>> {
+export class AuditEvent extends Model<
+  InferAttributes<AuditEvent>,
+  InferCreationAttributes<AuditEvent>
+> {
   declare id: CreationOptional<number>
   declare networkId: number
   declare actorId: CreationOptional<number | null>
@@ -12,8 +20,8 @@ export class AuditEvent extends Model<InferAttributes<AuditEvent>, InferCreation
   declare subject: string
   declare subjectUid: CreationOptional<string | null>
   declare studioId: CreationOptional<number | null>
-  declare beforeState: CreationOptional<unknown | null>
-  declare afterState: CreationOptional<unknown | null>
+  declare beforeState: CreationOptional<Record<string, unknown> | null>
+  declare afterState: CreationOptional<Record<string, unknown> | null>
   declare requestId: CreationOptional<string | null>
 }
 

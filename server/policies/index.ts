@@ -65,6 +65,11 @@ const POLICIES: Readonly<Record<Ability, Policy>> = {
   'audit.read': admin,
 }
 
+/** Runs the network: may give any role. */
+export function isNetworkAdmin(scope: Scope): boolean {
+  return admin(scope)
+}
+
 /** May this person do it, there (target) or anywhere (no target)? No by default. */
 export function can(scope: Scope, ability: Ability, target?: Target): boolean {
   return POLICIES[ability](scope, target)
@@ -76,6 +81,10 @@ export function studiosWith(scope: Scope, ability: Ability): number[] {
 }
 
 /** The abilities named, for one thing: what presenters send along. */
-export function abilitiesFor(scope: Scope, target: Target | undefined, names: readonly Ability[] = ABILITIES): Abilities {
+export function abilitiesFor(
+  scope: Scope,
+  target: Target | undefined,
+  names: readonly Ability[] = ABILITIES,
+): Abilities {
   return Object.fromEntries(names.map((name) => [name, can(scope, name, target)]))
 }

@@ -1,5 +1,5 @@
 import { QueryTypes } from 'sequelize'
-import type { Sequelize } from 'sequelize'
+import type { Sequelize, Transaction } from 'sequelize'
 import { Membership, Network, Studio } from '../models/index.js'
 import type { NetworkRow, Scope } from '../policies/index.js'
 
@@ -12,8 +12,9 @@ export function networkRow(network: Network): NetworkRow {
   return { id, uid, slug, name, timeZone, currency, temperatureUnit, lengthUnit, weekStart }
 }
 
-async function studioIdsOf(networkId: number): Promise<number[]> {
+async function studioIdsOf(networkId: number, transaction?: Transaction): Promise<number[]> {
   const studios = await Studio.findAll({
+    transaction,
     where: { networkId },
     attributes: ['id'],
     order: ['id'],
@@ -46,9 +47,12 @@ export async function scopeFor(
 }
 
 /** The scope of the system itself in a network: jobs and command-line tools. It may do everything there. */
-export async function systemScope(slugOrId: string | number): Promise<Scope | null> {
+export async function systemScope(
+  slugOrId: string | number,
+  transaction?: Transaction,
+): Promise<Scope | null> {
   const where = typeof slugOrId === 'number' ? { id: slugOrId } : { slug: slugOrId }
-  const network = await Network.findOne({ where })
+  const network = await Network.findOne({ where, transaction })
   if (!network) return null
   return {
     network: networkRow(network),
@@ -58,7 +62,7 @@ export async function systemScope(slugOrId: string | number): Promise<Scope | nu
       { role: 'network-admin', studioId: null },
       { role: 'owner', studioId: null },
     ],
-    studioIds: await studioIdsOf(network.id),
+    studioIds: await studioIdsOf(network.id, transaction),
     requestId: null,
   }
 }
