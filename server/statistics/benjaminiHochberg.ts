@@ -21,7 +21,8 @@ export function benjaminiHochberg(input: { pValues: readonly number[] }): { qVal
   const qValues = new Array<number>(n).fill(1)
   let smallest = 1
   order.forEach((index, place) => {
-    smallest = Math.min(smallest, (n * (pValues[index] as number)) / (n - place))
+    // The quotient first: it is never below 1, so rounding cannot take q below p.
+    smallest = Math.min(smallest, (n / (n - place)) * (pValues[index] as number))
     qValues[index] = smallest
   })
   return { qValues }
