@@ -5,7 +5,7 @@ import { faultNode } from '../shared/faults/index.js'
 import { ABILITIES } from './roles.js'
 
 /** Public identity of a row: a UUID (version 7 where we make it). */
-export const uid = z.uuid()
+export const uid = z.uuid().toLowerCase()
 /** A calendar day in the studio's zone, YYYY-MM-DD. */
 export const day = z.iso.date()
 /** An instant, ISO 8601 in UTC. */

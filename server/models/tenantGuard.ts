@@ -37,11 +37,10 @@ interface GuardedOptions {
 }
 
 function namesNetwork(where: unknown): boolean {
-  return (
-    typeof where === 'object' &&
-    where !== null &&
-    typeof (where as { networkId?: unknown }).networkId === 'number'
-  )
+  if (typeof where !== 'object' || where === null) return false
+  // Sequelize has turned attributes into columns already when it asks about a bulk destroy.
+  const { networkId, network_id: column } = where as { networkId?: unknown; network_id?: unknown }
+  return typeof networkId === 'number' || typeof column === 'number'
 }
 
 /** Puts the guard's hooks on a tenant model. */

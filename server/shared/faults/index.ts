@@ -1,2 +1,3 @@
 export * from './tree.js'
 export * from './rules.js'
+export * from './atRisk.js'
