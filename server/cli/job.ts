@@ -4,6 +4,7 @@
  * Progress goes to stderr, the outcome to stdout. Exit 0 when it was done, 1 when it failed, 2 for a
  * job or network that is not there. A run that another process holds already is waited for.
  */
+import { randomBytes } from 'node:crypto'
 import { setTimeout as pause } from 'node:timers/promises'
 import { parseArgs } from 'node:util'
 import { RUNNERS } from '../../jobs/schedule.js'
@@ -90,7 +91,8 @@ function print(run: JobRunRow, json: boolean): number {
 
 async function main(args: string[]): Promise<number> {
   const asked = read(args)
-  const config = readConfig()
+  // The tool signs nobody in: without a secret of the server it makes do with any.
+  const config = readConfig({ SESSION_SECRET: randomBytes(32).toString('hex'), ...process.env })
   const sequelize = createDatabase(config.databaseUrl, { poolMax: 4 })
   try {
     const deps: Deps = { sequelize, clock: systemClock, logger: createLogger(config.logLevel, 'stderr'), config }
