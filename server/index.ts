@@ -7,14 +7,19 @@ import { ConfigError, EXIT_CONFIG, readConfig } from './config.js'
 import type { Config } from './config.js'
 import { createDatabase } from './database/connect.js'
 import { migrate } from './database/migrate.js'
+import { DemoThereError, makeDemo } from './demo/makeDemo.js'
 import type { Deps } from './deps.js'
 import { addressOf } from './launch/settings.mjs'
 import { createLogger } from './logger.js'
+import { Network } from './models/index.js'
+import { forgetAttempts } from './queries/signInAttempts.js'
 import { startScheduler } from './scheduling/index.js'
 
 /** The server process; `server/config.ts` tells what it is given and what it owes the launcher. */
 
 const STOP_MS = 8_000
+const ATTEMPTS_KEPT_MS = 24 * 3600_000
+const DEMO_SEED = 1
 
 function configOrExit(): Config {
   try {
@@ -31,6 +36,18 @@ async function prepare(deps: Deps): Promise<void> {
   const ran = await migrate(deps.sequelize)
   if (ran.length > 0) deps.logger.info({ ran }, 'migrated')
   await seedAllNetworks()
+  await forgetAttempts(deps.sequelize, new Date(deps.clock.now().getTime() - ATTEMPTS_KEPT_MS))
+  if (deps.config.demo && (await Network.count()) === 0) await makeDemoOnce(deps)
+}
+
+/** Another server over the same database may have made it meanwhile. */
+async function makeDemoOnce(deps: Deps): Promise<void> {
+  const ends = deps.clock.now().toISOString().slice(0, 10)
+  try {
+    await makeDemo(deps, { seed: DEMO_SEED, ends, withStudy: true })
+  } catch (error) {
+    if (!(error instanceof DemoThereError)) throw error
+  }
 }
 
 function warnAbout({ config, logger }: Deps): void {
