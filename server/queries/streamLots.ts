@@ -35,14 +35,17 @@ const FROM = `FROM firings f
   JOIN lots l ON l.network_id = f.network_id AND l.firing_id = f.id
   WHERE f.network_id = ? AND f.status = 'reported' AND f.local_date BETWEEN ? AND ? AND l.pieces > 0`
 
-/** Small sets are folded into text, so that each lot comes once: "factor=level" with commas; a loss a line. */
+/**
+ * Small sets are folded into text, so that each lot comes once: "factor=level" with commas; a loss a line. The keys are
+ * named, because after a bulk import MariaDB's statistics are old and it then reads all losses of the network for each lot.
+ */
 const ROWS = `SELECT f.id, f.studio_id, f.kiln_id, f.kind, f.programme_id, f.opening_temperature_c, f.whole_load_failed IS NOT NULL,
-    (SELECT GROUP_CONCAT(fl.factor, '=', fl.level_id ORDER BY fl.id) FROM firing_levels fl
+    (SELECT GROUP_CONCAT(fl.factor, '=', fl.level_id ORDER BY fl.id) FROM firing_levels fl FORCE INDEX (firing_levels_once)
       WHERE fl.network_id = f.network_id AND fl.firing_id = f.id),
     l.is_rest, l.pieces, l.turned_away, l.not_looked_at, l.refire_count,
-    (SELECT GROUP_CONCAT(ll.factor, '=', ll.level_id ORDER BY ll.id) FROM lot_levels ll
+    (SELECT GROUP_CONCAT(ll.factor, '=', ll.level_id ORDER BY ll.id) FROM lot_levels ll FORCE INDEX (lot_levels_once)
       WHERE ll.network_id = l.network_id AND ll.lot_id = l.id),
-    (SELECT GROUP_CONCAT(CONCAT_WS('|', o.fault, o.outcome, o.pieces, o.neighbour, o.also_faults) ORDER BY o.id SEPARATOR '\\n') FROM losses o
+    (SELECT GROUP_CONCAT(CONCAT_WS('|', o.fault, o.outcome, o.pieces, o.neighbour, o.also_faults) ORDER BY o.id SEPARATOR '\\n') FROM losses o FORCE INDEX (losses_lot)
       WHERE o.network_id = l.network_id AND o.lot_id = l.id),
     ${columnNames.map((name) => `l.${name}`).join(', ')}
   ${FROM}`

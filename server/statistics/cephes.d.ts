@@ -9,6 +9,6 @@ declare module 'cephes' {
   export function incbi(a: number, b: number, p: number): number
   export function bdtr(k: number, n: number, p: number): number
   export function pdtr(k: number, mean: number): number
-  export function chdtrc(df: number, x: number): number
+  export function igamc(a: number, x: number): number
   export function chdtri(df: number, upperTail: number): number
 }

@@ -11,7 +11,7 @@
  *   26 µs a t quantile.
  * Its ES module compiles asynchronously, hence the one top-level await below.
  */
-import { bdtr, chdtrc, chdtri, compiled, incbet, incbi, lgam, ndtr, ndtri, pdtr } from 'cephes'
+import { bdtr, chdtri, compiled, igamc, incbet, incbi, lgam, ndtr, ndtri, pdtr } from 'cephes'
 import { requireProbability } from './arguments.js'
 
 await compiled
@@ -100,7 +100,8 @@ export function chiSquareQuantile(p: number, df: number): number {
 /** P(X > x) for a chi-square with df > 0 (not necessarily whole) degrees of freedom; 1 at x ≤ 0. */
 export function chiSquareUpperTail(x: number, df: number): number {
   requirePositive('df', df)
-  return x <= 0 ? 1 : chdtrc(df, x)
+  // Not chdtrc, which refuses fewer than one degree of freedom.
+  return x <= 0 ? 1 : igamc(df / 2, x / 2)
 }
 
 /** ln n! for n ≥ 0. */
