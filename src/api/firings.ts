@@ -44,8 +44,12 @@ export function getFiring(network: string, firing: string, signal?: AbortSignal)
 }
 
 /** The load to copy for "as last time", or null. */
-export async function getLastFiring(network: string, kiln: string, kind: string): Promise<FiringDetail | null> {
-  return (await getJson(fill(PATHS.lastFiring, { network }), { schema: lastFiringOutput, query: { kiln, kind } })).firing
+export function lastFiringQuery(network: string, kiln: string, kind: string) {
+  return queryOptions({
+    queryKey: ['last-firing', network, kiln, kind],
+    queryFn: async ({ signal }) =>
+      (await getJson(fill(PATHS.lastFiring, { network }), { schema: lastFiringOutput, query: { kiln, kind }, signal })).firing,
+  })
 }
 
 /** Writes a revision: sent twice with the same uid and body it is one. @throws {ApiError} `stale`, `different-body`, `invalid` ... */

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import type { PackDraft } from '../../src/composables/firings/packDraft.js'
 import {
-  asLastTime, duplicateOf, emptyLot, emptyPack, inLots, levelsFor, lotFactors, packBodyOf, packOf, packProblems, recordedIn, restOf,
+  asLastTime, duplicateOf, emptyLot, emptyPack, fitToStudio, inLots, levelsFor, lotFactors, packBodyOf, packOf, packProblems, recordedIn, restOf,
 } from '../../src/composables/firings/packDraft.js'
 import { packBody } from '../../server/contract/firings.js'
 import type { Catalogue } from '../../server/contract/catalogue.js'
@@ -30,19 +30,19 @@ describe('what is wrong with a load', () => {
 
   it('is said beside each field that is empty', () => {
     const problems = packProblems({ ...emptyPack(makeUid), lots: [lot(3), lot(null)] })
-    expect(Object.keys(problems)).toEqual(['kiln', 'localDate', 'pieces', 'lots.1.pieces'])
+    expect(Object.keys(problems).sort()).toEqual(['kiln', 'localDate', 'lots.1.pieces', 'pieces'])
   })
 
   it('is that the lots hold more than the load', () => {
-    expect(packProblems(packed({ pieces: 40, lots: [lot(30), lot(11)] })).pieces).toBe('The lots hold 41, more than 40 pieces.')
+    expect(packProblems(packed({ pieces: 40, lots: [lot(30), lot(11)] })).pieces).toBe('The lots hold 41 pieces, 1 more than the firing.')
   })
 
   it('is that more pieces of a lot, or of the rest, were turned away than it has', () => {
     const mugs = lot(2)
     const draft = packed({ pieces: 10, lots: [mugs, lot(8)] })
     const away = (place: string, pieces: number) => ({ uid: makeUid(), lot: place, fault: 's-crack', pieces })
-    expect(packProblems({ ...draft, turnedAway: [away(mugs.uid, 3)] })).toEqual({ 'turnedAway.0.pieces': 'There are only 2 pieces there.' })
-    expect(packProblems({ ...draft, turnedAway: [away(draft.rest, 1)] })).toEqual({ 'turnedAway.0.pieces': 'There are only 0 pieces there.' })
+    expect(packProblems({ ...draft, turnedAway: [away(mugs.uid, 3)] })).toEqual({ 'turnedAway.0.pieces': '3 turned away, but the lot has 2 pieces.' })
+    expect(packProblems({ ...draft, turnedAway: [away(draft.rest, 1)] })).toEqual({ 'turnedAway.0.pieces': '1 turned away, but the lot has 0 pieces.' })
   })
 })
 
@@ -115,6 +115,11 @@ describe('levels to choose from', () => {
 
   it('are the common ones and the studio’s own, none archived', () => {
     expect(levelsFor(catalogue, 'clay_body', uidOf(400)).map(({ name }) => name)).toEqual(['Clay 1', 'Clay 2'])
+  })
+
+  it('are let go when the load moves to a studio that does not have them', () => {
+    const moved = fitToStudio(packed({ lots: [lot(3, { clay_body: uidOf(2), form: uidOf(1) })] }), catalogue, uidOf(401))
+    expect(moved.lots[0]?.levels).toEqual({ clay_body: null, form: uidOf(1) })
   })
 
   it('keep an archived one that the lot has already', () => {

@@ -1,6 +1,7 @@
 /** A firing and its lots in words: names, what was lost, what is recorded. The same on pages, in mails and on paper. */
-import type { LotCounts } from '../counts.js'
+import type { LossOutcome, LotCounts } from '../counts.js'
 import { fired } from '../counts.js'
+import { faultNode } from '../faults/tree.js'
 import type { FiringKind } from '../kinds.js'
 import { FIRING_KIND_NAMES } from '../kinds.js'
 import { formatCount, plural } from '../plural.js'
@@ -59,6 +60,18 @@ export function outcomeWords(counts: LotCounts): string {
     counts.notLookedAt > 0 ? `${formatCount(counts.notLookedAt)} not looked at` : '',
   ].filter(Boolean)
   return parts.length > 0 ? parts.join(', ') : 'all sound'
+}
+
+/** "S-crack, also crazing: 2 wasters (a neighbour did it)". */
+export function lossInWords(loss: { fault: string; also: readonly string[]; outcome: LossOutcome; pieces: number; neighbour: boolean }): string {
+  const name = (id: string): string => faultNode(id)?.name ?? id
+  const also = loss.also.length > 0 ? `, also ${loss.also.map((id) => name(id).toLowerCase()).join(' and ')}` : ''
+  return `${name(loss.fault)}${also}: ${outcomeCount(loss.outcome, loss.pieces)}${loss.neighbour ? ' (a neighbour did it)' : ''}`
+}
+
+function outcomeCount(outcome: LossOutcome, pieces: number): string {
+  if (outcome === 'turned-away') return `${formatCount(pieces)} turned away`
+  return outcome === 'undecided' ? `${formatCount(pieces)} undecided` : plural(pieces, outcome)
 }
 
 export interface FiringInWords extends LotCounts {

@@ -7,7 +7,7 @@ import type { FiringDetail, LotView, PackBody } from '../../../server/contract/f
 import type { Factor } from '../../../server/shared/factors.js'
 import { FIRING_FACTORS, LOT_FACTORS } from '../../../server/shared/factors.js'
 import type { FiringKind } from '../../../server/shared/kinds.js'
-import { formatCount, plural } from '../../../server/shared/plural.js'
+import { checkLoad } from '../../../server/shared/loadChecks.js'
 
 export type LevelChoice = string | string[] | null
 
@@ -204,31 +204,18 @@ export function recordedIn(draft: PackDraft): { factor: string; pieces: number }
   }))
 }
 
-/** What is wrong with the load, by field path; empty when it can be sent. */
+/** What is wrong with the load, by field path; empty when it can be sent. The counts are checked as the server checks them. */
 export function packProblems(draft: PackDraft): Record<string, string> {
-  const problems: Record<string, string> = {}
-  if (draft.kiln === null) problems.kiln = 'Which kiln?'
-  if (draft.localDate === null) problems.localDate = 'Which day?'
-  if (draft.pieces === null) problems.pieces = 'How many pieces in all? About is fine.'
-  else if (restOf(draft) < 0)
-    problems.pieces = `The lots hold ${formatCount(inLots(draft))}, more than ${plural(draft.pieces, 'piece')}.`
-  for (const [index, lot] of draft.lots.entries())
-    if (lot.pieces === null) problems[`lots.${index}.pieces`] = 'How many pieces?'
-  for (const [index, away] of draft.turnedAway.entries())
-    Object.assign(problems, awayProblems(draft, away, index))
-  return problems
-}
-
-function awayProblems(draft: PackDraft, away: PackAway, index: number): Record<string, string> {
-  const problems: Record<string, string> = {}
-  const lot = draft.lots.find(({ uid }) => uid === away.lot)
-  const there = lot ? (lot.pieces ?? 0) : Math.max(0, restOf(draft))
-  if (away.fault === null)
-    problems[`turnedAway.${index}.fault`] = 'What did you see? Not named is fine.'
-  if (away.pieces === null) problems[`turnedAway.${index}.pieces`] = 'How many?'
-  else if (turnedAwayOf(draft, away.lot) > there)
-    problems[`turnedAway.${index}.pieces`] = `There are only ${plural(there, 'piece')} there.`
-  return problems
+  const missing: Record<string, string> = {}
+  if (draft.kiln === null) missing.kiln = 'Which kiln?'
+  if (draft.localDate === null) missing.localDate = 'Which day?'
+  if (draft.pieces === null) missing.pieces = 'How many pieces in all? About is fine.'
+  for (const [index, lot] of draft.lots.entries()) if (lot.pieces === null) missing[`lots.${index}.pieces`] = 'How many pieces?'
+  for (const [index, away] of draft.turnedAway.entries()) {
+    if (away.fault === null) missing[`turnedAway.${index}.fault`] = 'What did you see? Not named is fine.'
+    if (away.pieces === null) missing[`turnedAway.${index}.pieces`] = 'How many?'
+  }
+  return { ...checkLoad(packBodyOf(draft)), ...missing }
 }
 
 /** The body to send; what does not apply to the kind is left out, however it was chosen before. */
@@ -266,6 +253,20 @@ export function packBodyOf(draft: PackDraft): PackBody {
       fault: away.fault ?? '',
       pieces: away.pieces ?? 0,
     })),
+  }
+}
+
+/** A load moved to another studio: levels that are not in its lists are let go, the others stay. */
+export function fitToStudio(draft: PackDraft, catalogue: Catalogue, studio: string | null): PackDraft {
+  const ok = (uid: string): boolean => {
+    const level = catalogue.levels.find((each) => each.uid === uid)
+    return level === undefined || level.studio === null || level.studio === studio
+  }
+  const fit = (value: LevelChoice): LevelChoice => (Array.isArray(value) ? value.filter(ok) : value !== null && ok(value) ? value : null)
+  return {
+    ...draft,
+    programme: fit(draft.programme) as string | null,
+    lots: draft.lots.map((lot) => ({ ...lot, levels: Object.fromEntries(Object.entries(lot.levels).map(([factor, value]) => [factor, fit(value)])) })),
   }
 }
 
