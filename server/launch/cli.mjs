@@ -4,9 +4,9 @@ import { buildStale } from './build.mjs'
 import { end } from './ending.mjs'
 import { alone, installPackages } from './install.mjs'
 import { at, textOf } from './places.mjs'
-import { launch, node, pause } from './programs.mjs'
+import { launch, pause } from './programs.mjs'
 import { say, Stop } from './say.mjs'
-import { serverEnv } from './serve.mjs'
+import { migrate, serverEnv } from './serve.mjs'
 import { openOrGiven, takeDataDir } from './start.mjs'
 
 const POLL_MS = 250
@@ -75,12 +75,7 @@ async function runTool(name, args, env) {
   return code ?? 1
 }
 
-export const migrateSource = (env) =>
-  node(toolArgs('migrate'), {
-    cwd: at(),
-    env,
-    failure: 'The database could not be brought up to date.',
-  })
+export const migrateSource = (env) => migrate(toolArgs('migrate'), env)
 
 /**
  * The running database, or one that is started for this run and stopped after it.

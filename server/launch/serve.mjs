@@ -2,11 +2,12 @@ import { randomBytes } from 'node:crypto'
 import { renameSync, statSync, writeSync, openSync, closeSync } from 'node:fs'
 import { join } from 'node:path'
 import { createInterface } from 'node:readline'
+import { isEnding } from './ending.mjs'
 import { writeWhole } from './lock.mjs'
 import { at, textOf } from './places.mjs'
 import { launch, node } from './programs.mjs'
 import { freePort, isFree } from './ports.mjs'
-import { complain, say, step, Stop } from './say.mjs'
+import { complain, gist, say, step, Stop } from './say.mjs'
 import { addressOf } from './settings.mjs'
 import { supervise } from './supervise.mjs'
 
@@ -61,12 +62,20 @@ export function serverEnv({ settings, port, databaseUrl, demo, baseUrl, base = p
   }
 }
 
-export const migrateBuilt = (env) =>
-  node([at('dist/server/cli/migrate.js')], {
-    cwd: at(),
-    env,
-    failure: 'The database could not be brought up to date.',
-  })
+/**
+ * Runs the migrations by `script`, the built tool or its source.
+ *
+ * @param {string[]} script arguments of Node
+ */
+export async function migrate(script, env) {
+  const { code, output } = await node(script, { cwd: at(), env, check: false })
+  if (code === 0) return
+  if (isEnding()) await new Promise(() => {})
+  if (code === EXIT_CONFIG) throw new Stop(output.trim())
+  throw new Stop('The database could not be brought up to date.', gist(output))
+}
+
+export const migrateBuilt = (env) => migrate([at('dist/server/cli/migrate.js')], env)
 
 /**
  * Whether this run is in demo mode, and makes the demo where one is due.
