@@ -14,53 +14,49 @@ export interface StrataRatio {
   }
 }
 
-/** Running sums; one object for a whole test. */
-interface Sums {
-  R: number
-  S: number
-  mixedStrata: number
-  exposedUnits: number
-  exposedEvents: number
-  unexposedUnits: number
-  unexposedEvents: number
+/** Counts of one stratum; one object is filled again and again. */
+interface Counted {
+  n1: number
+  n0: number
+  a: number
+  c: number
 }
 
 /**
- * Mantel–Haenszel ratio over the mixed strata, with limits by leaving out one stratum (or one row of a stratum) with
- * events at a time. Two passes: the sums, then what each part takes away from them.
+ * Mantel–Haenszel ratio over the mixed strata, with limits by leaving out one stratum (or one row of
+ * a stratum) with events at a time. Two passes over the rows: the sums, then what each part takes away
+ * from them; counting twice is cheaper than keeping the counts.
  */
 export function ratioWithLimits(
   rows: StrataRows,
   level: number,
   leaveOut: 'stratum' | 'row',
 ): StrataRatio {
-  const sums: Sums = {
-    R: 0,
-    S: 0,
-    mixedStrata: 0,
-    exposedUnits: 0,
-    exposedEvents: 0,
-    unexposedUnits: 0,
-    unexposedEvents: 0,
+  const totals = { exposedUnits: 0, exposedEvents: 0, unexposedUnits: 0, unexposedEvents: 0 }
+  const one: Counted = { n1: 0, n0: 0, a: 0, c: 0 }
+  let mixedStrata = 0
+  let R = 0
+  let S = 0
+  for (let g = 0; g < rows.strata; g += 1) {
+    if (!count(rows, g, one)) continue
+    mixedStrata += 1
+    totals.exposedUnits += one.n1
+    totals.exposedEvents += one.a
+    totals.unexposedUnits += one.n0
+    totals.unexposedEvents += one.c
+    R += partR(one)
+    S += partS(one)
   }
-  const strata: StratumParts = { n1: [], n0: [], a: [], c: [], g: [] }
-  for (let g = 0; g < rows.strata; g += 1) addStratum(rows, g, sums, strata)
-  const { mixedStrata, R, S, ...totals } = sums
-  return { ...limits(rows, R, S, strata, level, leaveOut), mixedStrata, totals }
+  return { ...limits(rows, R, S, level, leaveOut), mixedStrata, totals }
 }
 
-/** Counts of the mixed strata with events. */
-interface StratumParts {
-  n1: number[]
-  n0: number[]
-  a: number[]
-  c: number[]
-  g: number[]
-}
-
-function addStratum(rows: StrataRows, g: number, sums: Sums, strata: StratumParts): void {
-  const { starts, events, exposed } = rows
-  const counted = rows.represents ?? rows.units
+/** Counts stratum g; false when it is not mixed. */
+function count(
+  { starts, units, represents, events, exposed }: StrataRows,
+  g: number,
+  into: Counted,
+): boolean {
+  const counted = represents ?? units
   let n1 = 0
   let n0 = 0
   let a = 0
@@ -74,44 +70,41 @@ function addStratum(rows: StrataRows, g: number, sums: Sums, strata: StratumPart
       c += events[i] as number
     }
   }
-  if (n1 === 0 || n0 === 0) return
-  sums.mixedStrata += 1
-  sums.exposedUnits += n1
-  sums.exposedEvents += a
-  sums.unexposedUnits += n0
-  sums.unexposedEvents += c
-  if (a + c === 0) return
-  sums.R += (a * n0) / (n1 + n0)
-  sums.S += (c * n1) / (n1 + n0)
-  strata.n1.push(n1)
-  strata.n0.push(n0)
-  strata.a.push(a)
-  strata.c.push(c)
-  strata.g.push(g)
+  into.n1 = n1
+  into.n0 = n0
+  into.a = a
+  into.c = c
+  return n1 > 0 && n0 > 0
 }
 
-/** Jackknife limits of the log ratio: se² = (G−1)/G·Σ(b₍g₎ − b)², t with G − 1; null when it rests on one part. */
+function partR({ a, n0, n1 }: Counted): number {
+  return (a * n0) / (n1 + n0)
+}
+
+function partS({ c, n1, n0 }: Counted): number {
+  return (c * n1) / (n1 + n0)
+}
+
+/**
+ * Jackknife limits of the log ratio: se² = (G−1)/G·Σ(b₍g₎ − b)², t with G − 1; null when it rests on
+ * one part.
+ */
 function limits(
   rows: StrataRows,
   R: number,
   S: number,
-  strata: StratumParts,
   level: number,
   leaveOut: 'stratum' | 'row',
-): { ratio: number | null; lower: number | null; upper: number | null } {
+): Pick<StrataRatio, 'ratio' | 'lower' | 'upper'> {
   if (!(S > 0)) return { ratio: null, lower: null, upper: null }
   if (!(R > 0)) return { ratio: 0, lower: null, upper: null }
   const ratio = R / S
   const spread = new Spread(R, S)
-  for (let k = 0; k < strata.g.length; k += 1) {
-    const n1 = strata.n1[k] as number
-    const n0 = strata.n0[k] as number
-    const a = strata.a[k] as number
-    const c = strata.c[k] as number
-    const partR = (a * n0) / (n1 + n0)
-    const partS = (c * n1) / (n1 + n0)
-    if (leaveOut === 'stratum') spread.without(partR, partS)
-    else leaveRowsOut(rows, strata.g[k] as number, { n1, n0, a, c, partR, partS }, spread)
+  const one: Counted = { n1: 0, n0: 0, a: 0, c: 0 }
+  for (let g = 0; g < rows.strata; g += 1) {
+    if (!count(rows, g, one) || one.a + one.c === 0) continue
+    if (leaveOut === 'stratum') spread.without(partR(one), partS(one))
+    else leaveRowsOut(rows, g, one, spread)
   }
   const standardError = spread.standardError()
   if (standardError === null) return { ratio, lower: null, upper: null }
@@ -121,13 +114,10 @@ function limits(
     : { ratio, lower: null, upper: null }
 }
 
-function leaveRowsOut(
-  rows: StrataRows,
-  g: number,
-  whole: { n1: number; n0: number; a: number; c: number; partR: number; partS: number },
-  spread: Spread,
-): void {
+function leaveRowsOut(rows: StrataRows, g: number, whole: Counted, spread: Spread): void {
   const counted = rows.represents ?? rows.units
+  const wholeR = partR(whole)
+  const wholeS = partS(whole)
   for (let i = rows.starts[g] as number; i < (rows.starts[g + 1] as number); i += 1) {
     const units = counted[i] as number
     const events = rows.events[i] as number
@@ -136,7 +126,7 @@ function leaveRowsOut(
     const n0 = whole.n0 - (isExposed ? 0 : units)
     const a = whole.a - (isExposed ? events : 0)
     const c = whole.c - (isExposed ? 0 : events)
-    spread.without(whole.partR - (a * n0) / (n1 + n0), whole.partS - (c * n1) / (n1 + n0))
+    spread.without(wholeR - (a * n0) / (n1 + n0), wholeS - (c * n1) / (n1 + n0))
   }
 }
 

@@ -1,3 +1,4 @@
+import { FIRING_KINDS, type FiringKind } from '../shared/kinds.js'
 import { compareText, type CodeColumn, type Codes, type Dictionary } from './levelColumn.js'
 import { REST_PIECE, type FactorColumn, type StudyFirings, type StudyTable } from './table.js'
 import { levelsOfKey, type RawColumns } from './tableBuilder.js'
@@ -125,25 +126,43 @@ function arrangeFirings(
   const order = new Int32Array(names.length)
   for (let old = 0; old < names.length; old += 1) order[(remap[old + 1] as number) - 1] = old
   const studios = raw.firings.studios.sorted()
+  const studio = Uint32Array.from(
+    order,
+    (old) => (studios.remap[raw.firings.studio[old] as number] as number) - 1,
+  )
+  const kind = [...order].map((old) => raw.firings.kind[old] as FiringKind)
   return {
     count: names.length,
     names,
     start,
-    studio: Uint32Array.from(
-      order,
-      (old) => (studios.remap[raw.firings.studio[old] as number] as number) - 1,
-    ),
+    studio,
     studios: studios.names,
-    kind: [...order].map((old) => raw.firings.kind[old] as StudyFirings['kind'][number]),
+    kind,
+    ...groupsOf(studio, kind),
     factors: raw.firingFactors.map(({ factor, codes, names: levelNames }): FactorColumn => {
-      const sorted = sortedLevels(factor, levelNames)
-      const arranged: Codes = Uint32Array.from(
-        order,
-        (old) => sorted.remap[codes[old] as number] as number,
-      )
-      return { factor, levels: sorted.levels, sets: sorted.sets, codes: arranged }
+      const { levels, sets, remap: renamed } = sortedLevels(factor, levelNames)
+      const arranged = Uint32Array.from(order, (old) => renamed[codes[old] as number] as number)
+      return { factor, levels, sets, codes: arranged }
     }),
   }
+}
+
+/** Firings of the same studio and kind are compared with each other. */
+function groupsOf(
+  studio: Codes,
+  kind: readonly FiringKind[],
+): Pick<StudyFirings, 'byGroup' | 'groups'> {
+  const group = kind.map(
+    (one, f) => (studio[f] as number) * FIRING_KINDS.length + FIRING_KINDS.indexOf(one),
+  )
+  const byGroup = Int32Array.from(kind.keys()).sort(
+    (a, b) => (group[a] as number) - (group[b] as number) || a - b,
+  )
+  const groups: number[] = []
+  byGroup.forEach((f, place) => {
+    if (place === 0 || group[f] !== group[byGroup[place - 1] as number]) groups.push(place)
+  })
+  return { byGroup, groups: Int32Array.from([...groups, byGroup.length]) }
 }
 
 function arrangeLosses(raw: RawColumns, order: Int32Array): StudyTable['losses'] {

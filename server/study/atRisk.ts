@@ -152,29 +152,29 @@ export function atRiskFirings(table: StudyTable, lots: AtRiskLots): Panel {
 
 /** A panel of the firings that have units, by studio and kind. */
 export function firingPanel(table: StudyTable, units: Float64Array): Panel {
-  const { firings } = table
-  const group = (f: number): string =>
-    `${String(firings.studio[f]).padStart(9, '0')} ${firings.kind[f]}`
-  const groups = new Map<string, number[]>()
-  for (let f = 0; f < firings.count; f += 1) {
-    if ((units[f] as number) <= 0) continue
-    const key = group(f)
-    const list = groups.get(key)
-    if (list) list.push(f)
-    else groups.set(key, [f])
+  const { byGroup, groups } = table.firings
+  const firing = new Int32Array(byGroup.length)
+  const starts: number[] = [0]
+  let rows = 0
+  for (let h = 0; h + 1 < groups.length; h += 1) {
+    const before = rows
+    for (let place = groups[h] as number; place < (groups[h + 1] as number); place += 1) {
+      const f = byGroup[place] as number
+      if ((units[f] as number) <= 0) continue
+      firing[rows] = f
+      rows += 1
+    }
+    if (rows > before) starts.push(rows)
   }
-  const order = [...groups.keys()].sort()
-  const starts = new Int32Array(order.length + 1)
-  order.forEach((key, g) => {
-    starts[g + 1] = (starts[g] as number) + (groups.get(key) as number[]).length
-  })
-  const firing = Int32Array.from(order.flatMap((key) => groups.get(key) as number[]))
+  const kept = firing.slice(0, rows)
+  const mine = new Float64Array(rows)
+  for (let i = 0; i < rows; i += 1) mine[i] = units[kept[i] as number] as number
   return {
-    rows: firing.length,
-    strata: order.length,
-    starts,
-    units: Float64Array.from(firing, (f) => units[f] as number),
+    rows,
+    strata: starts.length - 1,
+    starts: Int32Array.from(starts),
+    units: mine,
     represents: null,
-    firing,
+    firing: kept,
   }
 }

@@ -1,12 +1,6 @@
 import { atRiskFirings, atRiskLots, type AtRiskLots, type Panel } from './atRisk.js'
-import {
-  firingsByLots,
-  firingView,
-  lotView,
-  pairView,
-  type FactorView,
-  type FiringsByLots,
-} from './factorView.js'
+import { firingView, lotView, pairView, type FactorView } from './factorView.js'
+import { firingsByLots, type FiringsByLots } from './firingsByLots.js'
 import { coverage, levelTotals, type LevelTotals } from './levelTotals.js'
 import { NO, REST_PIECE, type FactorColumn, type StudyTable } from './table.js'
 import { StratumLevels } from './stratumLevels.js'

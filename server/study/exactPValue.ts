@@ -50,9 +50,8 @@ export function pearsonTail(z: number, skewness: number): number {
   // A gamma this close to normal is normal to three digits, and its shape grows without bound.
   if (Math.abs(skewness) < 0.01) return normalTwoSided(z)
   const shape = 4 / (skewness * skewness)
-  // Below its least value, -2/γ standardised, all of the distribution lies above.
   const upper = (t: number): number =>
-    t <= -Math.sqrt(shape) ? 1 : chiSquareUpperTail(2 * (shape + t * Math.sqrt(shape)), 2 * shape)
+    chiSquareUpperTail(2 * (shape + t * Math.sqrt(shape)), 2 * shape)
   const size = Math.abs(z)
   return Math.min(1, upper(size) + (1 - upper(-size)))
 }

@@ -1,7 +1,6 @@
 import type { AtRiskLots, Panel } from './atRisk.js'
-import { firingPanel } from './atRisk.js'
 import { compareText, type Codes } from './levelColumn.js'
-import { REST_PIECE, type FactorColumn, type StudyTable } from './table.js'
+import type { FactorColumn } from './table.js'
 
 /** Levels of one factor (or of a pair of factors) on the rows of a panel. */
 export interface FactorView {
@@ -110,85 +109,6 @@ function pairsOf(
       }),
     ),
   )
-}
-
-/** Whole firings by a factor of the lot: a firing is on a side only when all its recorded lots are. */
-export interface FiringsByLots {
-  panel: Panel
-  view: FactorView
-  /** Recorded pieces' events by row of the panel, from events of the lots. */
-  events: (lotEvents: Float64Array) => Float64Array
-}
-
-/** Firings as rows, with the levels of a lot factor that any of their lots and that all of their lots had. */
-export function firingsByLots(
-  table: StudyTable,
-  lots: AtRiskLots,
-  view: FactorView,
-): FiringsByLots {
-  const units = new Float64Array(table.firings.count)
-  const any: Set<number>[] = []
-  const all: Set<number>[] = []
-  for (let i = 0; i < lots.rows; i += 1) {
-    const code = recordedCode(table, lots, view, i)
-    if (code === 0) continue
-    const f = lots.firing[i] as number
-    units[f] = (units[f] as number) + (lots.units[i] as number)
-    const levels = view.sets === null ? [code] : [...(view.sets[code] as Int32Array)]
-    const known = any[f]
-    if (known === undefined) {
-      any[f] = new Set(levels)
-      all[f] = new Set(levels)
-    } else {
-      for (const level of levels) known.add(level)
-      for (const level of all[f] as Set<number>)
-        if (!levels.includes(level)) (all[f] as Set<number>).delete(level)
-    }
-  }
-  const panel = firingPanel(table, units)
-  const placeOf = new Int32Array(table.firings.count).fill(-1)
-  panel.firing.forEach((f, place) => {
-    placeOf[f] = place
-  })
-  return {
-    panel,
-    view: { ...view, at: panel.firing, ...coded(any, all, table.firings.count) },
-    events: (lotEvents) => {
-      const events = new Float64Array(panel.rows)
-      for (let i = 0; i < lots.rows; i += 1) {
-        if ((lotEvents[i] as number) === 0 || recordedCode(table, lots, view, i) === 0) continue
-        const place = placeOf[lots.firing[i] as number] as number
-        events[place] = (events[place] as number) + (lotEvents[i] as number)
-      }
-      return events
-    },
-  }
-}
-
-function recordedCode(table: StudyTable, lots: AtRiskLots, view: FactorView, i: number): number {
-  return table.part[lots.source[i] as number] === REST_PIECE ? 0 : codeAt(view, i)
-}
-
-/** One code for every distinct pair of sets. */
-function coded(any: readonly Set<number>[], all: readonly Set<number>[], firings: number) {
-  const codes = new Uint32Array(firings)
-  const known = new Map<string, number>()
-  const anySets: Int32Array[] = [new Int32Array(0)]
-  const allSets: Int32Array[] = [new Int32Array(0)]
-  any.forEach((levels, f) => {
-    const anyLevels = Int32Array.from(levels).sort()
-    const allLevels = Int32Array.from(all[f] as Set<number>).sort()
-    const key = `${anyLevels.join()}|${allLevels.join()}`
-    let code = known.get(key)
-    if (code === undefined) {
-      code = anySets.length
-      known.set(key, code)
-      anySets.push(anyLevels)
-      allSets.push(allLevels)
-    }
-    codes[f] = code
-  })
-  return { codes, sets: anySets, all: allSets }
 }
 
 /** Order of two level keys, for results that do not depend on the order of rows. */

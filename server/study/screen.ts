@@ -35,8 +35,8 @@ export interface ScreenInput {
   /** Strata with events. */
   touched: Int32Array
   comparison: ComparisonKind
-  /** These levels alone. */
-  only?: ReadonlySet<number> | undefined
+  /** Levels that are compared in a better way already. */
+  except?: ReadonlySet<number> | undefined
   /** What the mix of lots leads one to expect, by row, up to a constant for a stratum. */
   expected?: Float64Array | undefined
   level: number
@@ -79,47 +79,39 @@ interface Tested extends Candidate {
   informativeFirings: number
 }
 
-/** The comparisons of one fault and factor, and the levels that too few firings held beside others. */
+/** The comparisons of one fault and factor, and the levels that enough firings held beside others. */
 export interface Screened {
   comparisons: Comparison[]
-  /** Levels under the least number of informative firings. */
-  hardlyMixed: number[]
+  wellMixed: Set<number>
 }
 
 /**
- * Every level of a factor against all other recorded levels, inside strata, for one fault. Work is proportional to
- * the rows of strata with events times the levels met in them, whatever the number of levels of the factor.
+ * Every level of a factor against all other recorded levels, inside strata, for one fault. Work is
+ * proportional to the rows of strata with events times the levels met in them, whatever the number of
+ * levels of the factor.
  */
 export function screenFactor(input: ScreenInput): Screened {
-  const candidates = candidatesOf(input)
-  const eligible: Candidate[] = []
-  const hardlyMixed: number[] = []
-  for (const candidate of candidates) {
-    const few = input.comparison === 'within-firings' && candidate.strata.length < LEAST_INFORMATIVE
-    if (few) hardlyMixed.push(candidate.level)
-    else if (isEligible(input.totals, candidate)) eligible.push(candidate)
-  }
+  const leaveOut = input.comparison === 'within-firings' ? 'stratum' : 'row'
+  const wellMixed = new Set<number>()
   const tested: Tested[] = []
-  for (const candidate of eligible) {
-    const within = input.comparison === 'within-firings'
-    const { result, scores } = testStrata(
-      gather(input, candidate),
-      input.level,
-      within ? 'stratum' : 'row',
-    )
+  for (const candidate of candidatesOf(input)) {
+    if (leaveOut === 'stratum' && candidate.strata.length < LEAST_INFORMATIVE) continue
+    if (!isEligible(input.totals, candidate)) {
+      wellMixed.add(candidate.level)
+      continue
+    }
+    const { result, scores } = testStrata(gather(input, candidate), input.level, leaveOut)
     const informative = informativeFirings(input, candidate, result)
-    if (informative >= LEAST_INFORMATIVE)
-      tested.push({ ...candidate, result, scores, informativeFirings: informative })
-    else if (within) hardlyMixed.push(candidate.level)
+    if (informative < LEAST_INFORMATIVE) continue
+    wellMixed.add(candidate.level)
+    tested.push({ ...candidate, result, scores, informativeFirings: informative })
   }
-  return {
-    comparisons: onceEach(input.totals, tested).map((one) => comparisonOf(input, one)),
-    hardlyMixed,
-  }
+  const comparisons = onceEach(input.totals, tested).map((one) => comparisonOf(input, one))
+  return { comparisons, wellMixed }
 }
 
 /** Levels met in strata with events, each with the strata where it was mixed with others. */
-function candidatesOf({ panel, sums, events, touched, only }: ScreenInput): Candidate[] {
+function candidatesOf({ panel, sums, events, touched, except }: ScreenInput): Candidate[] {
   const byLevel = new Map<number, Candidate>()
   for (let t = 0; t < touched.length; t += 1) {
     const g = touched[t] as number
@@ -127,7 +119,7 @@ function candidatesOf({ panel, sums, events, touched, only }: ScreenInput): Cand
     if (sums.total === 0) continue
     for (let k = 0; k < sums.count; k += 1) {
       const level = sums.levels[k] as number
-      if (!sums.isMixed(level) || (only !== undefined && !only.has(level))) continue
+      if (!sums.isMixed(level) || except?.has(level)) continue
       const exposedEvents = sums.exposed(level)
       const unexposedEvents = sums.unexposed(level)
       if (exposedEvents + unexposedEvents === 0) continue
@@ -144,15 +136,23 @@ function candidatesOf({ panel, sums, events, touched, only }: ScreenInput): Cand
   return [...byLevel.values()].sort((a, b) => a.level - b.level)
 }
 
-function isEligible(
-  totals: LevelTotals,
-  { level, exposedEvents, unexposedEvents }: Candidate,
-): boolean {
+function isEligible(totals: LevelTotals, candidate: Candidate): boolean {
+  const { level, exposedEvents, unexposedEvents } = candidate
+  return enoughUnits(totals, level) && exposedEvents + unexposedEvents >= LEAST_EVENTS
+}
+
+function enoughUnits({ exposedUnits, unexposedUnits }: LevelTotals, level: number): boolean {
   return (
-    (totals.exposedUnits[level] as number) >= LEAST_UNITS &&
-    (totals.unexposedUnits[level] as number) >= LEAST_UNITS &&
-    exposedEvents + unexposedEvents >= LEAST_EVENTS
+    (exposedUnits[level] as number) >= LEAST_UNITS &&
+    (unexposedUnits[level] as number) >= LEAST_UNITS
   )
+}
+
+/** Could any level be compared on these rows, whatever the fault? */
+export function someEligible(totals: LevelTotals, except: ReadonlySet<number>): boolean {
+  for (let level = 1; level < totals.exposedUnits.length; level += 1)
+    if (!except.has(level) && enoughUnits(totals, level)) return true
+  return false
 }
 
 /** Lots: firings are the strata. Firings: the rows of informative strata, if both sides have more than one. */

@@ -3,7 +3,7 @@ import type { FaultEvents } from './faultEvents.js'
 import { coverage } from './levelTotals.js'
 import { levelTable } from './levelTable.js'
 import { expectedByFiring } from './mix.js'
-import { screenFactor, type Scratch } from './screen.js'
+import { screenFactor, someEligible, type Scratch } from './screen.js'
 import { REST_PIECE, type FactorColumn, type StudyTable } from './table.js'
 import type { Comparison, LevelLine, StudyFault } from './types.js'
 
@@ -83,27 +83,26 @@ function lotFactor(screen: FaultScreen, on: Viewed): Comparison[] {
     touched: laid.strata,
     comparison: 'within-firings',
   })
-  if (within.hardlyMixed.length === 0) return within.comparisons
-  return [...within.comparisons, ...lotFactorBetween(screen, on, new Set(within.hardlyMixed))]
+  return [...within.comparisons, ...lotFactorBetween(screen, on, within.wellMixed)]
 }
 
-/** Levels that too few firings held beside others: firings that held nothing else against firings without. */
+/**
+ * Levels that too few firings held beside others: firings that held nothing else against firings
+ * without.
+ */
 function lotFactorBetween(
   screen: FaultScreen,
   on: Viewed,
-  only: ReadonlySet<number>,
+  except: ReadonlySet<number>,
 ): Comparison[] {
   const whole = screen.denominator.byFirings(on.view)
+  // Most levels are mixed well: then there is nothing left to compare and no events need be added up.
+  if (!someEligible(whole.totals, except)) return []
   const events = whole.events(screen.laid.events)
   const touched = strataWith(whole.panel.starts, events)
-  return screenFactor({
-    ...common(screen),
-    ...whole,
-    events,
-    touched,
-    comparison: 'between-firings',
-    only,
-  }).comparisons
+  const comparison = 'between-firings'
+  return screenFactor({ ...common(screen), ...whole, events, touched, comparison, except })
+    .comparisons
 }
 
 function firingFactors(screen: FaultScreen): Comparison[] {

@@ -56,6 +56,9 @@ export interface StudyFirings {
   studio: Codes
   studios: readonly string[]
   kind: readonly FiringKind[]
+  /** Firings by studio, then kind: group h holds byGroup[groups[h]] … byGroup[groups[h + 1] − 1]. */
+  byGroup: Int32Array
+  groups: Int32Array
   factors: readonly FactorColumn[]
 }
 
