@@ -25,9 +25,9 @@ export const SETTINGS_SECTIONS = [
   'racks',
   'classes',
   'programmes',
+  'forms',
   'people',
   'jobs',
-  'audit',
 ] as const
 export type SettingsSection = (typeof SETTINGS_SECTIONS)[number]
 
