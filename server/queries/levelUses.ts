@@ -13,15 +13,15 @@ function usesOf({ id, of, column }: Factor): string[] {
   const parts = []
   if (column) {
     const name = columnName(column)
-    parts.push(`SELECT ${name} AS level, id AS user FROM lots
+    parts.push(`SELECT ${name} AS level, id AS named_by FROM lots
       WHERE network_id = :networkId AND ${name} IS NOT NULL`)
   }
   if (id === 'programme') {
-    parts.push(`SELECT programme_id, id FROM firings
+    parts.push(`SELECT programme_id AS level, id AS named_by FROM firings
       WHERE network_id = :networkId AND programme_id IS NOT NULL`)
   }
   const table = of === 'lot' ? 'lot' : 'firing'
-  parts.push(`SELECT level_id, ${table}_id FROM ${table}_levels
+  parts.push(`SELECT level_id AS level, ${table}_id AS named_by FROM ${table}_levels
     WHERE network_id = :networkId AND factor = '${id}'`)
   return parts
 }

@@ -88,8 +88,7 @@ describe('signing in', () => {
         .post(PATHS.session)
         .send({ email, password: 'wrong' })
         .expect(401)
-      const { requestId: _, ...error } = body.error
-      answers.push(error)
+      answers.push({ ...body.error, requestId: 'any' })
     }
     expect(answers[0]).toEqual(answers[1])
     expect(answers[0]).toMatchObject({ code: 'sign-in', fields: { password: expect.any(String) } })
