@@ -88,22 +88,7 @@ export const levelAttributes = z.object({
 })
 export type LevelAttributes = z.output<typeof levelAttributes>
 
-const PLAIN = ['description'] as const
-const ATTRIBUTES: Readonly<Record<string, readonly (keyof LevelAttributes)[]>> = {
-  clay_body: ['family', 'cone', 'description'],
-  glaze: ['cone', 'foodUse', 'description'],
-  programme: ['kind', 'cone', 'description'],
-  class: ['classLevel', 'startsOn', 'endsOn', 'description'],
-}
-/** The keys that count for levels of a factor, in the order of its form; others are dropped. */
-export function attributesOf(factor: string): readonly (keyof LevelAttributes)[] {
-  return ATTRIBUTES[factor] ?? PLAIN
-}
-
-/** Factors that are practices: of each, one level a list may be the reference. */
-export function isPractice(factor: string): boolean {
-  return factor.endsWith('_practice')
-}
+export { attributesOf, isPractice } from '../shared/levelAttributes.js'
 
 export const level = z.object({
   uid,

@@ -3,12 +3,12 @@ import { computed } from 'vue'
 import { FACTORS } from '../../server/shared/factors.js'
 import { FAULT_TREE, withAncestors } from '../../server/shared/faults/index.js'
 import { FIRING_KINDS, FIRING_KIND_NAMES } from '../../server/shared/kinds.js'
-import type { Option } from '../components/ui/types'
+import type { Choice } from './choice'
 import { catalogueQuery } from '../api/catalogue'
 import { useNetworkSlug } from './useNetwork'
 
 /** Faults by family, coarse nodes before those below them. */
-const FAULTS: readonly Option[] = FAULT_TREE.map((node) => {
+const FAULTS: readonly Choice[] = FAULT_TREE.map((node) => {
   const root = withAncestors(node.id).at(-1)
   return {
     value: node.id,
@@ -17,7 +17,7 @@ const FAULTS: readonly Option[] = FAULT_TREE.map((node) => {
   }
 })
 
-const KINDS: readonly Option[] = FIRING_KINDS.map((kind) => ({
+const KINDS: readonly Choice[] = FIRING_KINDS.map((kind) => ({
   value: kind,
   label: `${FIRING_KIND_NAMES[kind]} firings`,
 }))
@@ -26,11 +26,11 @@ const KINDS: readonly Option[] = FIRING_KINDS.map((kind) => ({
 export function useFilterOptions() {
   const network = useNetworkSlug()
   const catalogue = useQuery(computed(() => catalogueQuery(network.value)))
-  const studios = computed<Option[]>(() =>
+  const studios = computed<Choice[]>(() =>
     (catalogue.data.value?.studios ?? []).map(({ uid, name }) => ({ value: uid, label: name })),
   )
   /** Kilns, of one studio where one is chosen. */
-  function kilnsOf(studio: string | undefined): Option[] {
+  function kilnsOf(studio: string | undefined): Choice[] {
     const names = new Map(studios.value.map(({ value, label }) => [value, label]))
     return (catalogue.data.value?.kilns ?? [])
       .filter((kiln) => !studio || kiln.studio === studio)

@@ -30,7 +30,7 @@ export function useLossLinks(
     return {
       name: 'firings',
       params: { network: network.value },
-      query: Object.fromEntries(given) as Record<string, string>,
+      query: Object.fromEntries(given),
     }
   }
   return {

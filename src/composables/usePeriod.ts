@@ -1,6 +1,6 @@
 import { computed } from 'vue'
 import type { ComputedRef } from 'vue'
-import type { Option } from '../components/ui/types'
+import type { Choice } from './choice'
 
 /** Months as YYYY-MM, first and last; both missing: the last twelve. */
 export interface Months {
@@ -30,7 +30,7 @@ export function monthNow(timeZone: string): string {
  */
 export function usePeriod(months: ComputedRef<Months>, timeZone: () => string) {
   const now = computed(() => monthNow(timeZone()))
-  const options = computed<Option[]>(() => {
+  const options = computed<Choice[]>(() => {
     const year = Number(now.value.slice(0, 4))
     const spans = SPANS.map((n) => ({
       value: n === 12 ? '' : `${monthsBefore(now.value, n - 1)}..${now.value}`,

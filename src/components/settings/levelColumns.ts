@@ -1,5 +1,5 @@
 import type { LevelView } from '../../../server/contract/catalogue.js'
-import { attributesOf, isPractice } from '../../../server/contract/catalogue.js'
+import { attributesOf, isPractice } from '../../../server/shared/levelAttributes.js'
 import { factor as factorOf } from '../../../server/shared/factors.js'
 import { FIRING_KIND_NAMES } from '../../../server/shared/kinds.js'
 import { formatCount } from '../../../server/shared/plural.js'

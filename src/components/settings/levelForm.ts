@@ -1,5 +1,5 @@
 import type { LevelAttributes, LevelView } from '../../../server/contract/catalogue.js'
-import { attributesOf } from '../../../server/contract/catalogue.js'
+import { attributesOf } from '../../../server/shared/levelAttributes.js'
 
 export interface LevelValues {
   factor: string
