@@ -50,7 +50,7 @@ const server = [
   },
   {
     folder: 'server/presenters',
-    only: ['contract', 'shared', 'policies'],
+    only: ['contract', 'shared', 'policies', 'statistics'],
     types: ['models', 'queries'],
     because: 'A presenter lists the fields of a row that it is given; it loads nothing.',
   },
@@ -77,7 +77,7 @@ const client = [
   {
     folder: 'src/components',
     never: ['stores', 'api', 'router', 'pages', 'layouts'],
-    types: ['contract'],
+    types: ['server/contract'],
     because: 'A component takes props and emits events; pages own queries, stores and routes.',
   },
   {
@@ -92,8 +92,9 @@ const client = [
   },
   ...['composables', 'stores'].map((name) => ({
     folder: `src/${name}`,
-    never: ['pages', 'components', 'layouts'],
-    because: 'Composables and stores serve pages and components and never import them.',
+    never: ['pages', 'layouts'],
+    types: ['components'],
+    because: 'Composables and stores serve pages and components and never run them.',
   })),
   {
     folder: 'src/api',
@@ -132,7 +133,7 @@ function clientPatterns({ folder, never, types = [], because }) {
   return [
     { regex: outside(never), message: because },
     ...types.map((name) => ({
-      regex: `(^|/)server/${name}/`,
+      regex: `(^|/)${name}/`,
       allowTypeImports: true,
       message: because,
     })),
