@@ -1,19 +1,19 @@
 import { createPinia } from 'pinia'
 import { VueQueryPlugin } from '@tanstack/vue-query'
 import { Quasar } from 'quasar'
-import iconSet from 'quasar/icon-set/svg-mdi-v7'
 import { createApp } from 'vue'
 import { httpEvents } from './api/http'
 import { makeQueryClient } from './api/queryClient'
 import App from './App.vue'
 import './assets/main.css'
+import { quasarOptions } from './quasar'
 import { makeRouter } from './router'
 import { useSessionStore } from './stores/session'
 
 const queryClient = makeQueryClient()
 const app = createApp(App)
 app.use(createPinia())
-app.use(Quasar, { plugins: {}, iconSet })
+app.use(Quasar, quasarOptions)
 app.use(VueQueryPlugin, { queryClient })
 
 const router = makeRouter()

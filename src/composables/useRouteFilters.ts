@@ -19,7 +19,7 @@ export function writeFilters<S extends z.ZodObject>(
   schema: S,
   filters: Record<string, unknown>,
 ): LocationQueryRaw {
-  const entries = Object.entries(schema.shape).flatMap(([key, field]) => {
+  const entries = Object.entries(schema.shape).flatMap(([key, field]): [string, string][] => {
     const value = filters[key]
     if (typeof value !== 'string' && typeof value !== 'number' && typeof value !== 'boolean')
       return []

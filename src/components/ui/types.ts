@@ -22,6 +22,8 @@ export interface Column<Row> {
   text?: (row: Row) => string | number | null | undefined
   /** On the phone: heading of the card, or left out. */
   phone?: 'title' | 'hide'
+  /** Stays on one line: dates, names of kilns. */
+  nowrap?: boolean
   /** CSS width, for columns that must not move. */
   width?: string
 }
