@@ -1,5 +1,4 @@
-import { instantOf } from './calendar.js'
-import { daysBetween } from './calendar.js'
+import { daysBetween, instantOf } from './calendar.js'
 import type { KilnHabits, Scenery } from './kettleRing.js'
 import { LotMaker, recordedShare } from './loads.js'
 import type { Load, TrueLot } from './loads.js'

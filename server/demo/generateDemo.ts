@@ -51,8 +51,23 @@ function network(
       .map((day) => maker.firing(kiln, day))
       .filter((firing): firing is DemoFiring => firing !== null),
   )
+  leaveWork(firings, scenery, span.ends)
   firings.sort((a, b) => (a.pack.at < b.pack.at ? -1 : a.pack.at > b.pack.at ? 1 : a.uid < b.uid ? -1 : 1))
   return { ...scenery, firings }
+}
+
+/** Loads of the last two days wait for their report, and in every studio its newest one, so that there is work to do. */
+function leaveWork(firings: readonly DemoFiring[], { studios, kilns }: Pick<Scenery, 'studios' | 'kilns'>, ends: string): void {
+  for (const { key } of studios) {
+    const own = new Set(kilns.filter(({ studio }) => studio === key).map((kiln) => kiln.key))
+    const ofStudio = firings.filter(({ kiln }) => own.has(kiln))
+    const newest = ofStudio.reduce<DemoFiring | null>((a, b) => (a && a.pack.at >= b.pack.at ? a : b), null)
+    for (const firing of ofStudio) {
+      if (firing !== newest && daysBetween(firing.localDate, ends) > 2) continue
+      firing.report = null
+      firing.amend = null
+    }
+  }
 }
 
 /** Days on which a kiln is packed: a kiln needs two days for a load, and nobody fires in the holidays. */

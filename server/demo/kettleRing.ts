@@ -24,10 +24,10 @@ const BERLIN = { timeZone: 'Europe/Berlin', currency: 'EUR', temperatureUnit: 'C
 const TORONTO = { timeZone: 'America/Toronto', currency: 'CAD', temperatureUnit: 'F', lengthUnit: 'in', weekStart: 0 } as const
 
 const STUDIOS: DemoStudio[] = [
-  { key: 'otter-stair', name: 'Otter Stair', ...LISBON, appearance: 'name', letter: null },
-  { key: 'plum-yard', name: 'Plum Yard', ...BERLIN, appearance: 'name', letter: null },
+  { key: 'otter-stair', name: 'Otter Stair', ...LISBON, appearance: 'name', letter: 'A' },
+  { key: 'plum-yard', name: 'Plum Yard', ...BERLIN, appearance: 'name', letter: 'B' },
   { key: 'mooring-loft', name: 'Mooring Loft', ...TORONTO, appearance: 'letter', letter: 'C' },
-  { key: 'nine-buckets', name: 'Nine Buckets', ...LISBON, appearance: 'hidden', letter: null },
+  { key: 'nine-buckets', name: 'Nine Buckets', ...LISBON, appearance: 'hidden', letter: 'D' },
 ]
 
 function kiln(studio: string, key: string, litres: number, heat: DemoKiln['heat'], shelves: number, note: string | null = null): DemoKiln {
@@ -49,17 +49,17 @@ const KILNS: DemoKiln[] = [
 ]
 
 const HABITS: Record<string, KilnHabits> = {
-  badger: { perWeek: 2.4, kinds: [['bisque', 5], ['glaze', 6]], openedHot: 0.03, counter: 411 },
-  wren: { perWeek: 2, kinds: [['bisque', 3], ['glaze', 7], ['single', 0.4]], openedHot: 0.03, counter: 96 },
-  toad: { perWeek: 0.5, kinds: [['raku', 1]], openedHot: 0, counter: null },
-  north: { perWeek: 2.3, kinds: [['bisque', 2], ['glaze', 8]], openedHot: 0.04, counter: 1204 },
-  south: { perWeek: 2.3, kinds: [['bisque', 7], ['glaze', 4]], openedHot: 0.22, counter: 877 },
-  thimble: { perWeek: 1.5, kinds: [['glaze', 6], ['lustre', 3], ['bisque', 2]], openedHot: 0.05, counter: 60 },
-  anchor: { perWeek: 2.3, kinds: [['bisque', 5], ['glaze', 6]], openedHot: 0.05, counter: 330 },
-  buoy: { perWeek: 2, kinds: [['bisque', 4], ['glaze', 6]], openedHot: 0.05, counter: 318 },
-  gull: { perWeek: 1.6, kinds: [['single', 4], ['glaze', 5], ['bisque', 1]], openedHot: 0.2, counter: 145 },
-  'bucket-one': { perWeek: 1.9, kinds: [['bisque', 5], ['glaze', 5]], openedHot: 0.05, counter: 27 },
-  'bucket-two': { perWeek: 1.7, kinds: [['bisque', 3], ['glaze', 5]], openedHot: 0.05, counter: null },
+  badger: { perWeek: 2.54, kinds: [['bisque', 5], ['glaze', 6]], openedHot: 0.03, counter: 411 },
+  wren: { perWeek: 2.12, kinds: [['bisque', 3], ['glaze', 7], ['single', 0.4]], openedHot: 0.03, counter: 96 },
+  toad: { perWeek: 0.53, kinds: [['raku', 1]], openedHot: 0, counter: null },
+  north: { perWeek: 2.44, kinds: [['bisque', 2], ['glaze', 8]], openedHot: 0.04, counter: 1204 },
+  south: { perWeek: 2.44, kinds: [['bisque', 7], ['glaze', 4]], openedHot: 0.22, counter: 877 },
+  thimble: { perWeek: 1.59, kinds: [['glaze', 6], ['lustre', 3], ['bisque', 2]], openedHot: 0.05, counter: 60 },
+  anchor: { perWeek: 2.44, kinds: [['bisque', 5], ['glaze', 6]], openedHot: 0.05, counter: 330 },
+  buoy: { perWeek: 2.12, kinds: [['bisque', 4], ['glaze', 6]], openedHot: 0.05, counter: 318 },
+  gull: { perWeek: 1.7, kinds: [['single', 4], ['glaze', 5], ['bisque', 1]], openedHot: 0.2, counter: 145 },
+  'bucket-one': { perWeek: 2.01, kinds: [['bisque', 5], ['glaze', 5]], openedHot: 0.05, counter: 27 },
+  'bucket-two': { perWeek: 1.8, kinds: [['bisque', 3], ['glaze', 5]], openedHot: 0.05, counter: null },
 }
 
 type Attributes = DemoLevel['attributes']

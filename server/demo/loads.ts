@@ -35,7 +35,10 @@ const FORMS: Readonly<Record<string, Weights<string>>> = {
   pressed: [['plate', 60], ['bowl', 40]],
   mixed: [['sculpture', 60], ['jug', 40]],
 }
-const JOINED = new Set(['mug', 'jar', 'jug', 'sculpture'])
+/** Share of lots with joined parts: handles, spouts and seams, but feet, lugs and sprigs too. */
+const JOINED: Readonly<Record<string, number>> = {
+  mug: 0.97, jug: 0.97, jar: 0.8, sculpture: 0.9, bottle: 0.4, bowl: 0.35, plate: 0.25, tile: 0.1,
+}
 const BUILT = new Set(['slab', 'coil'])
 
 /** How common each level is; what is not named has a weight of 10, and a studio's own is as common as three. */
@@ -69,7 +72,7 @@ export class LotMaker {
     const forming = random.weighted(FORMING)
     const form = random.weighted(FORMS[forming] ?? [['bowl', 1]])
     const glazed = load.kind !== 'bisque'
-    const hasJoint = JOINED.has(form) || BUILT.has(forming)
+    const hasJoint = random.chance(BUILT.has(forming) ? 0.9 : (JOINED[form] ?? 0.5))
     const aClass = random.chance(0.75) ? this.one('class', load, random) : null
     const glazes = glazed ? this.glazes(load, random) : []
     const levels: TrueLot['levels'] = {

@@ -3,6 +3,7 @@ import type { Transaction } from 'sequelize'
 import { v7 } from 'uuid'
 import { createNetwork } from '../commands/createNetwork.js'
 import { hashPassword } from '../commands/passwords.js'
+import { rebuildRollups } from '../commands/rebuildRollups.js'
 import { runStudy } from '../commands/runStudy.js'
 import { writeFirings } from '../commands/writeFirings.js'
 import type { Keys, Written } from '../commands/writeFirings.js'
@@ -10,6 +11,7 @@ import { inTransaction } from '../database/inTransaction.js'
 import type { Deps } from '../deps.js'
 import { Kiln, Level, Membership, Network, Studio, User } from '../models/index.js'
 import type { Scope } from '../policies/scope.js'
+import { refreshStatistics } from '../queries/refreshStatistics.js'
 import { systemScope } from '../queries/scopeFor.js'
 import { DEMO_ACCOUNTS, DEMO_PASSWORD } from './accounts.js'
 import { composeFiring } from './compose.js'
@@ -51,9 +53,11 @@ export async function makeDemo(
     }
     return written
   })
+  await refreshStatistics(deps.sequelize)
   for (const { slug } of made) {
     const scope = await systemScope(slug)
     if (!scope) throw new Error(`The network ${slug} vanished.`)
+    await rebuildRollups(scope, deps)
     if (withStudy) await runStudy(scope, deps)
   }
   return made

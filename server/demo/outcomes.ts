@@ -3,7 +3,7 @@ import { FAULT_TREE, faultNode, faultRule, withDescendants } from '../shared/fau
 import type { FiringKind } from '../shared/kinds.js'
 import type { Load, TrueLot } from './loads.js'
 import type { Random } from './random.js'
-import { BASE_RISKS } from './truth.js'
+import { BASE_RISKS, WORK_RISKS } from './truth.js'
 import type { BaseRisk, PlantedEffect } from './truth.js'
 
 /** Pieces of one lot that failed alike, before anything is written down. */
@@ -57,6 +57,13 @@ function holds(effect: PlantedEffect, lot: TrueLot, firing: FiringRisks): boolea
   })
 }
 
+function workRatio(fault: string, lot: TrueLot): number {
+  const work = WORK_RISKS[fault]
+  if (!work) return 1
+  const held = lot.levels[work.factor]
+  return (typeof held === 'string' ? work.ratios[held] : undefined) ?? work.others
+}
+
 /** Can pieces of this lot show the fault at all? */
 function atRisk({ fault }: BaseRisk, lot: TrueLot, kind: FiringKind): boolean {
   const rule = faultRule(fault)
@@ -64,10 +71,6 @@ function atRisk({ fault }: BaseRisk, lot: TrueLot, kind: FiringKind): boolean {
   if (rule.needsJoint && !lot.hasJoint) return false
   if (rule.needsRefire && lot.refireCount === 0) return false
   if (rule.needsGlaze && kind === 'bisque') return false
-  if (fault === 's-crack') return lot.levels.forming === 'thrown'
-  if (fault === 'slab-base-straight-crack') return lot.levels.forming === 'slab'
-  if (fault === 'lid-gallery-crack') return lot.levels.form === 'jar'
-  if (fault === 'seam-crack') return lot.levels.forming === 'slab' || lot.levels.forming === 'coil'
   return true
 }
 
@@ -85,8 +88,9 @@ export function failures(
     const own = firing.own.get(base.fault)
     if (own === undefined || !atRisk(base, lot, kind)) continue
     const ratio = effectsOn(base.fault, effects).reduce((all, each) => all * (holds(each, lot, firing) ? each.ratio : 1), 1)
-    risks.push([base.fault, own * ratio])
-    sum += own * ratio
+    const risk = own * ratio * workRatio(base.fault, lot)
+    risks.push([base.fault, risk])
+    sum += risk
   }
   const scale = sum > 0.9 ? 0.9 / sum : 1
   const found = new Map<string, Failure>()

@@ -13,8 +13,8 @@ export const SALT_PAIR: Scenery = {
   name: 'Salt Pair',
   ...BRISTOL,
   studios: [
-    { key: 'low-tide', name: 'Low Tide Room', ...BRISTOL, appearance: 'name', letter: null },
-    { key: 'high-tide', name: 'High Tide Room', ...BRISTOL, appearance: 'name', letter: null },
+    { key: 'low-tide', name: 'Low Tide Room', ...BRISTOL, appearance: 'name', letter: 'A' },
+    { key: 'high-tide', name: 'High Tide Room', ...BRISTOL, appearance: 'name', letter: 'B' },
   ],
   kilns: [
     { key: 'limpet', studio: 'low-tide', name: 'Limpet', litres: 140, heat: 'electric', shelves: 4, note: null },

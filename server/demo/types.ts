@@ -38,7 +38,7 @@ export interface DemoStudio {
   lengthUnit: 'mm' | 'in'
   weekStart: number
   appearance: 'name' | 'letter' | 'hidden'
-  letter: string | null
+  letter: string
 }
 
 export interface DemoKiln {
