@@ -19,8 +19,13 @@ export interface LotSheet {
   columns: SheetColumn[]
 }
 
-/** Without these a lot is not a lot. */
-const NEEDED: readonly SheetField[] = ['firing', 'pieces']
+export interface LotSheetOptions {
+  required?: readonly SheetField[]
+  as?: Readonly<Record<string, string>>
+}
+
+/** Without these a lot is not a lot; its firing may be told by the day instead. */
+const NEEDED: readonly SheetField[] = ['pieces']
 
 /**
  * Reads a lot sheet: CSV with a header line, one line a lot. Columns are known by their names in any order and case
@@ -28,17 +33,20 @@ const NEEDED: readonly SheetField[] = ['firing', 'pieces']
  * | or +. `lost_…` columns are wasters of that fault; `lost` alone is of no named fault, or, beside named ones, the
  * total that they are part of.
  *
- * @param required columns that the sheet must have beside firing and pieces.
+ * A sheet without a column for the firing takes the loads of one kiln, day and kind for one firing.
+ *
+ * @param required columns that the sheet must have beside pieces, and firing or date.
+ * @param as headers that are to be read as if they were called otherwise.
  * @returns rows and problems; a problem names line (the header is line 1) and column. Never throws for a bad sheet.
  */
 export function parseLotSheet(
   text: string,
-  { required = [] }: { required?: readonly SheetField[] } = {},
+  { required = [], as = {} }: LotSheetOptions = {},
 ): LotSheet {
   const { header, records, problems } = readCells(text)
-  const columns = header.map(recogniseColumn)
+  const columns = header.map((name) => ({ ...recogniseColumn(as[name] ?? name), header: name }))
   if (problems.length === 0 || columns.length > 0)
-    problems.push(...columnProblems(columns, [...NEEDED, ...required]))
+    problems.push(...columnProblems(columns, [...NEEDED, ...required]), ...firingColumn(columns))
   const rows: LotSheetRow[] = []
   if (columns.length === 0 || problems.some((problem) => problem.row === 1))
     return { rows, problems, columns }
@@ -52,9 +60,17 @@ export function parseLotSheet(
   return { rows, problems, columns }
 }
 
-/** The key of a firing: the same number in another studio or kiln is another firing. */
+/** The key of a firing: the same number in another studio or kiln is another firing; without a number, day and kind. */
 export function firingKey(row: LotSheetRow): string {
-  return [row.studio ?? '', row.kiln ?? '', row.firing].join(' / ')
+  const firing = row.firing === '' ? `${row.date ?? ''} ${row.kind ?? ''}` : row.firing
+  return [row.studio ?? '', row.kiln ?? '', firing].join(' / ')
+}
+
+function firingColumn(columns: readonly SheetColumn[]): SheetProblem[] {
+  const tells = (column: SheetColumn): boolean =>
+    column.is === 'field' && (column.field === 'firing' || column.field === 'date')
+  if (columns.length === 0 || columns.some(tells)) return []
+  return [{ row: 1, column: 'firing', message: `No column gives ${FIELD_WORDS.firing}.` }]
 }
 
 function columnProblems(

@@ -22,6 +22,8 @@ export interface LotSheetRow {
   /** By factor id: the code of a fixed level, else the name as written; a list for factors that allow several. */
   levels: Record<string, string | string[] | null>
   firingLevels: Record<string, string | null>
+  /** As read, where the sheet gives degrees and not a band. */
+  openingTemperatureC: number | null
   /** Wasters by fault, none of 0 pieces. */
   losses: { fault: string; pieces: number }[]
   /** Cells of columns that are nothing we know, by header. */
@@ -85,6 +87,7 @@ function emptyRow(line: number): LotSheetRow {
     refireCount: 0,
     levels: {},
     firingLevels: {},
+    openingTemperatureC: null,
     losses: [],
     others: {},
   }
@@ -143,6 +146,7 @@ function setLevel(row: LotSheetRow, factor: Factor, cell: string | null): void {
   if (factor.of === 'firing') {
     const celsius =
       factor.id === 'opening_temperature' && cell !== null && /^\d+(\.\d+)?$/.test(cell)
+    if (celsius) row.openingTemperatureC = Math.round(Number(cell))
     row.firingLevels[factor.id] = celsius
       ? openingTemperatureBand(Number(cell))
       : fixedLevel(factor, cell)

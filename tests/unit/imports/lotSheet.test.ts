@@ -31,6 +31,7 @@ describe('a lot sheet', () => {
         refireCount: 0,
         levels: {},
         firingLevels: {},
+        openingTemperatureC: null,
         losses: [],
         others: {},
       },
