@@ -1,9 +1,10 @@
 import type { Denominator, Viewed } from './denominator.js'
 import type { FaultEvents } from './faultEvents.js'
+import type { Scratch } from './gather.js'
 import { coverage } from './levelTotals.js'
 import { levelTable } from './levelTable.js'
 import { expectedByFiring } from './mix.js'
-import { screenFactor, someEligible, type Scratch } from './screen.js'
+import { screenFactor, someEligible } from './screen.js'
 import { REST_PIECE, type FactorColumn, type StudyTable } from './table.js'
 import type { Comparison, LevelLine, StudyFault } from './types.js'
 
