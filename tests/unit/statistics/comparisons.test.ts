@@ -31,7 +31,7 @@ function expectNoHoles(result: object): void {
   }
 }
 
-describe('withinStrataTest', () => {
+describe('withinStrataTest', { timeout: 30_000 }, () => {
   it('does not depend on the order of rows', () => {
     fc.assert(
       fc.property(rows, (given) => {
@@ -127,7 +127,7 @@ describe('withinStrataTest', () => {
   })
 })
 
-describe('benjaminiHochberg', () => {
+describe('benjaminiHochberg', { timeout: 30_000 }, () => {
   const pValues = fc.array(fc.double({ min: 0, max: 1, noNaN: true }), { maxLength: 60 })
 
   it('never makes a p-value smaller, nor larger than 1', () => {
@@ -224,7 +224,7 @@ describe('fisherExact', () => {
   })
 })
 
-describe('quantiles', () => {
+describe('quantiles', { timeout: 30_000 }, () => {
   const p = fc.double({ min: 1e-9, max: 1 - 1e-9, noNaN: true })
 
   it('undo their distribution functions', () => {

@@ -79,7 +79,7 @@ describe.each([
   })
 })
 
-describe('clusteredRate', () => {
+describe('clusteredRate', { timeout: 30_000 }, () => {
   it('lies in 0..1 and holds the rate', () => {
     fc.assert(
       fc.property(firings, level, (clusters, confidence) => {
@@ -151,7 +151,7 @@ describe('clusteredRate', () => {
   })
 })
 
-describe('clusteredRateFromSums', () => {
+describe('clusteredRateFromSums', { timeout: 30_000 }, () => {
   const sumsOf = (clusters: readonly { events: number; units: number }[]) => {
     const used = clusters.filter(({ units }) => units > 0)
     const sum = (term: (m: number, y: number) => number) =>

@@ -37,7 +37,7 @@ const found = (fault: string, ...levels: string[]) =>
   result.findings.find((one) => one.fault === fault && one.levels.join() === levels.join())
 const planted = (fault: string) => truth.effects.find((effect) => effect.fault === fault)
 
-describe('the study of cohort.csv', () => {
+describe('the study of cohort.csv', { timeout: 30_000 }, () => {
   it('reads every lot of the sheet', () => {
     expect(sheet.problems).toEqual([])
     expect(result).toMatchObject({

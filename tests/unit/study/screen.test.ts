@@ -221,7 +221,7 @@ describe('the rest of a firing', () => {
   })
 })
 
-describe('the study as a whole', () => {
+describe('the study as a whole', { timeout: 30_000 }, () => {
   const random = randomNumbers(1)
   const normal = normalNumbers(random)
   const nothing = Array.from({ length: 120 }, (_, firing) => {
