@@ -1,10 +1,10 @@
 import { spawn } from 'node:child_process'
 import { once } from 'node:events'
 import { createInterface } from 'node:readline'
-import { beforeEach, describe, expect, it } from 'vitest'
+import { beforeEach, describe, expect, it, vi } from 'vitest'
 import { requestRun, whenRunRequested } from '../../server/commands/requestRun.js'
 import { JobSlot } from '../../server/models/index.js'
-import { createScheduler } from '../../server/scheduling/index.js'
+import { createScheduler, startScheduler } from '../../server/scheduling/index.js'
 import { LEASE_MS, MOST_TRIES, claimNext, ownerName } from '../../server/scheduling/slots.js'
 import type { JobContext, Runner } from '../../server/scheduling/types.js'
 import { testDatabaseUrl } from '../support/database.js'
@@ -210,6 +210,23 @@ describe('the scheduler', () => {
     expect(await claimNext(ownerName(), deps)).toMatchObject({ networkId: network.id })
     await holder.tick()
     expect((await slotsOf(network.id)).map(({ status }) => status)).toEqual(['running', 'waiting'])
+  })
+})
+
+describe('startScheduler', () => {
+  it('runs what is asked for in its process without waiting for the next minute, and what waited before it started', async () => {
+    const { deps, network, scope } = await setUp()
+    await requestRun(scope, 'study', deps)
+    const scheduler = startScheduler(deps)
+    const ended = (runs: number) =>
+      vi.waitFor(async () => expect((await slotsOf(network.id)).map(({ status }) => status)).toEqual(Array(runs).fill('done')), { timeout: 20_000 })
+    await ended(1)
+    await requestRun(scope, 'study', deps)
+    await ended(2)
+    await scheduler.stop()
+    expect((await slotsOf(network.id))[1]?.outcome).toBe('0 firings, 0 lots, 0 comparisons: 0 findings.')
+    await requestRun(scope, 'study', deps)
+    expect((await slotsOf(network.id)).map(({ status }) => status)).toEqual(['done', 'done', 'waiting'])
   })
 })
 

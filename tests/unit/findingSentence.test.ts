@@ -159,6 +159,7 @@ describe('counts and sureness', () => {
   it('gives the ratio with its interval and q', () => {
     expect(ratioLine(finding)).toBe('2.2 (1.5 to 3.1), q 0.003')
     expect(ratioLine({ ...finding, lower: null, upper: null, qValue: 0.00001 })).toBe('2.2, q under 0.001')
+    expect(ratioLine({ ...finding, ratio: 0, lower: null, upper: null })).toBe('0, q 0.003')
     expect(ratioLine({ ...finding, ratio: null, lower: null, upper: null, qValue: 0.04 })).toBe('no ratio, q 0.04')
   })
 

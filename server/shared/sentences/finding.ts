@@ -39,8 +39,9 @@ export function plainText(stretches: readonly Stretch[]): string {
   return stretches.map(({ text }) => text).join('')
 }
 
-/** A ratio as a figure: 2.24 is "2.2", 12.6 is "13", 0.43 is "0.43". */
+/** A ratio as a figure: 2.24 is "2.2", 12.6 is "13", 0.43 is "0.43", none at all "0". */
 export function ratioFigure(ratio: number): string {
+  if (ratio === 0) return '0'
   if (ratio >= 9.95) return formatCount(ratio)
   return ratio >= NEARLY_ONE ? ratio.toFixed(1) : ratio.toFixed(2)
 }
