@@ -106,7 +106,8 @@ const revisionBase = {
  * PUT /firings/:firing/revisions/:revision, both uids made by the client. Same body, same answer;
  * another body under the same uid is 409 `different-body`; a stale base is 409 `stale` with
  * `details.revision`. `pack` makes the firing or corrects its load before it is reported; `report`
- * needs a packed firing (its `pack`, when given, corrects the load as well); `amend` needs a reason.
+ * needs a packed firing (its `pack`, when given, corrects the load as well) or, with base 0 and a
+ * `pack`, makes one that was never packed; `amend` needs a reason.
  */
 export const revisionInput = z.discriminatedUnion('kind', [
   z.object({ kind: z.literal('pack'), ...revisionBase, pack: packBody }),
@@ -173,7 +174,9 @@ export type FiringRow = z.infer<typeof firingRow>
 export const FIRING_SORTS = ['-date', 'date', '-lost', 'lost', '-pieces', 'pieces', 'kiln', '-kiln'] as const
 /**
  * GET /firings and /firings.csv. Lists take several uids with commas. `fault` finds firings with
- * that node or any below it; `level` is a level's uid of any factor, of a lot or of the firing.
+ * that node or any below it; `level` is a level's uid of any factor, of a lot or of the firing: levels
+ * of one factor are alternatives, levels of several must all be there. Without `status` void firings
+ * are left out.
  */
 export const firingFilters = z.object({
   studio: z.string().optional(),
@@ -223,7 +226,7 @@ export const firingOutput = firingRow.extend({
 })
 export type FiringDetail = z.infer<typeof firingOutput>
 
-/** GET /firings/:firing/revisions/:number: a revision whole, as it was sent. */
+/** GET /firings/:firing/revisions/:number: a revision whole, as it was sent; makers and notes are null for readers outside the studio. */
 export const revisionOutput = revision.extend({ payload: z.unknown() })
 
 /** POST /firings/:firing/void */

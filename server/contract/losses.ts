@@ -6,6 +6,9 @@ import { FACTORS } from '../shared/factors.js'
  * GET /losses and below. Filters as in the list of firings; `kind` is one kind, since kinds are
  * never pooled into one rate. Reported firings only. `fault` narrows every rate to losses that
  * mention that node or one below it, over the pieces at risk of it.
+ *
+ * Rates are first-pass: pieces that had been fired before are in none of them but `refired`, and are
+ * the only ones that a fault of refires is over. Counts are those of the same pieces.
  */
 export const lossFilters = z.object({
   studio: z.string().optional(),
@@ -25,7 +28,10 @@ export const lossSummary = z.object({
   from: day,
   to: day,
   rates,
+  /** Pieces that had been fired before, over all faults: nothing is counted twice. */
+  refired: rates,
   counts,
+  /** Firings of all kinds, since a kiln counts them all; the missing ones are taken to be of this kind as often as the others are. */
   coverage,
 })
 export type LossSummary = z.infer<typeof lossSummary>

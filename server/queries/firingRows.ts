@@ -30,9 +30,12 @@ export interface FiringListRow extends LotCounts {
 }
 
 export type FiringSort = (typeof FIRING_SORTS)[number]
+/** `reported`: newest report first. */
+export type FiringOrder = FiringSort | 'reported'
 
 /** Ties are broken by day and id, so that every page is the same each time. */
-const ORDERS: Readonly<Record<FiringSort, string>> = {
+const ORDERS: Readonly<Record<FiringOrder, string>> = {
+  reported: 'f.reported_at DESC, f.id DESC',
   '-date': 'f.local_date DESC, f.id DESC',
   date: 'f.local_date, f.id',
   '-lost': 'f.wasters + f.refires DESC, f.local_date DESC, f.id DESC',
@@ -43,7 +46,7 @@ const ORDERS: Readonly<Record<FiringSort, string>> = {
   '-kiln': 'k.name DESC, f.kiln_id, f.local_date DESC, f.id DESC',
 }
 
-function from(sort: FiringSort): string {
+function from(sort: FiringOrder): string {
   const kiln = sort.endsWith('kiln') ? 'JOIN kilns k ON k.network_id = f.network_id AND k.id = f.kiln_id' : ''
   return `FROM firings f ${kiln}`
 }
@@ -60,7 +63,7 @@ export async function countFirings(sequelize: Sequelize, where: FiringWhere): Pr
 export async function firingIds(
   sequelize: Sequelize,
   where: FiringWhere,
-  sort: FiringSort,
+  sort: FiringOrder,
   page?: { limit: number; offset: number },
 ): Promise<number[]> {
   const rows = await sequelize.query<{ id: number }>(

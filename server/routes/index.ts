@@ -7,8 +7,10 @@ import { jobRoutes } from './jobs.js'
 import { kilnRoutes } from './kilns.js'
 import { levelRoutes } from './levels.js'
 import { linkRoutes } from './links.js'
+import { lossRoutes } from './losses.js'
 import { peopleRoutes } from './people.js'
 import { studioRoutes } from './studios.js'
+import { todayRoutes } from './today.js'
 
 /**
  * Every route below a network, and the account's own. Sign-in and health are mounted apart (app.ts).
@@ -23,6 +25,8 @@ export const ROUTES: readonly Route[] = [
   ...levelRoutes,
   ...peopleRoutes,
   ...firingRoutes,
+  ...lossRoutes,
+  ...todayRoutes,
   ...findingRoutes,
   ...jobRoutes,
 ]

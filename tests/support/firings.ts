@@ -39,11 +39,21 @@ const uidsOf = (level: Level | readonly Level[]): string | string[] =>
   Array.isArray(level) ? level.map(({ uid }: Level) => uid) : (level as Level).uid
 
 /** A lot of a load as the client sends it. */
-export function lotBody({ pieces, uid = v7(), levels = {}, refireCount = 0, maker = null, note = null, glazeOverlap = null }: LotOver): PackBody['lots'][number] {
+export function lotBody({
+  pieces,
+  uid = v7(),
+  levels = {},
+  refireCount = 0,
+  maker = null,
+  note = null,
+  glazeOverlap = null,
+}: LotOver): PackBody['lots'][number] {
   return {
     uid,
     pieces,
-    levels: Object.fromEntries(Object.entries(levels).map(([factor, level]) => [factor, uidsOf(level)])),
+    levels: Object.fromEntries(
+      Object.entries(levels).map(([factor, level]) => [factor, uidsOf(level)]),
+    ),
     glazeOverlap,
     refireCount,
     maker,
@@ -51,11 +61,20 @@ export function lotBody({ pieces, uid = v7(), levels = {}, refireCount = 0, make
   }
 }
 
-export function lossBody({ fault = 's-crack', also = [], outcome = 'waster', pieces, neighbour = false, features = {} }: LossOver): ReportBody['lots'][number]['losses'][number] {
+export function lossBody({
+  fault = 's-crack',
+  also = [],
+  outcome = 'waster',
+  pieces,
+  neighbour = false,
+  features = {},
+}: LossOver): ReportBody['lots'][number]['losses'][number] {
   return { uid: v7(), fault, also, outcome, pieces, neighbour, features }
 }
 
-export interface LoadOver extends Partial<Omit<PackBody, 'kiln' | 'lots' | 'pieces' | 'rest' | 'turnedAway'>> {
+export interface LoadOver extends Partial<
+  Omit<PackBody, 'kiln' | 'lots' | 'pieces' | 'rest' | 'turnedAway'>
+> {
   kiln: { uid: string }
   /** Without it the lots are the whole load. */
   pieces?: number
@@ -66,7 +85,14 @@ export interface LoadOver extends Partial<Omit<PackBody, 'kiln' | 'lots' | 'piec
 }
 
 /** Load and report of a firing, with everything that is left out filled in: a glaze firing of 2026-03-02. */
-export function loadBodies({ kiln, pieces, lots = [], rest = {}, report = {}, ...over }: LoadOver): { pack: PackBody; report: ReportBody } {
+export function loadBodies({
+  kiln,
+  pieces,
+  lots = [],
+  rest = {},
+  report = {},
+  ...over
+}: LoadOver): { pack: PackBody; report: ReportBody } {
   const described = lots.reduce((sum, lot) => sum + lot.pieces, 0)
   const parts = [...lots, { ...rest, pieces: 0 }].map((lot) => ({ lot, body: lotBody(lot) }))
   return {
@@ -85,7 +111,12 @@ export function loadBodies({ kiln, pieces, lots = [], rest = {}, report = {}, ..
       rest: parts.at(-1)?.body.uid ?? '',
       lots: parts.slice(0, -1).map(({ body }) => body),
       turnedAway: parts.flatMap(({ lot, body }) =>
-        (lot.turnedAway ?? []).map((away) => ({ uid: v7(), lot: body.uid, fault: 'crack-not-named', ...away })),
+        (lot.turnedAway ?? []).map((away) => ({
+          uid: v7(),
+          lot: body.uid,
+          fault: 'crack-not-named',
+          ...away,
+        })),
       ),
     },
     report: {
@@ -113,17 +144,32 @@ export interface MakeFiring extends Omit<LoadOver, 'kiln'> {
 
 /**
  * A firing that was packed and (unless `status` says otherwise) reported through the command, by the
- * system unless a scope is given. Without a kiln one is made.
+ * system unless a scope is given. Without a kiln one is made; without counts it is one lot of 10.
  */
-export async function makeFiring({ kiln, status = 'reported', scope, deps, ...over }: MakeFiring = {}) {
+export async function makeFiring({
+  kiln,
+  status = 'reported',
+  scope,
+  deps,
+  ...over
+}: MakeFiring = {}) {
   const home = kiln ?? (await makeKiln())
   const as = scope ?? (await makeScope(await networkOf(home)))
-  const bodies = loadBodies({ kiln: home, lots: [{ pieces: 10 }], ...over })
+  const lots = over.pieces === undefined ? [{ pieces: 10 }] : []
+  const bodies = loadBodies({ kiln: home, lots, ...over })
   const uid = v7()
   const send = async (input: RevisionInput): Promise<void> =>
-    saveRevision(as, { firing: uid, revision: v7(), input: revisionInput.parse(input) }, deps ?? (await testDeps()))
+    saveRevision(
+      as,
+      { firing: uid, revision: v7(), input: revisionInput.parse(input) },
+      deps ?? (await testDeps()),
+    )
   await send({ kind: 'pack', base: 0, deviceTime: null, pack: bodies.pack })
-  if (status === 'reported') await send({ kind: 'report', base: 1, deviceTime: null, report: bodies.report })
-  const firing = await Firing.findOne({ where: { networkId: home.networkId, uid }, rejectOnEmpty: true })
+  if (status === 'reported')
+    await send({ kind: 'report', base: 1, deviceTime: null, report: bodies.report })
+  const firing = await Firing.findOne({
+    where: { networkId: home.networkId, uid },
+    rejectOnEmpty: true,
+  })
   return { firing, kiln: home, ...bodies }
 }
