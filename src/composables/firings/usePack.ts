@@ -56,8 +56,15 @@ export function usePack({ network, edit, quick }: Options) {
   watch([() => catalogue.data.value, () => editing.data.value, () => editing.isFetchedAfterMount.value], () => {
     if (ready.value || !catalogue.data.value || (edit() !== null && (!editing.data.value || !editing.isFetchedAfterMount.value))) return
     ready.value = true
-    pack.begin(draftKey(user, network(), edit() === null ? 'pack' : `pack.${edit()}`), editing.data.value ?? null)
+    begin()
   }, { immediate: true })
+  // A load and a mere report are two drafts: one does not overwrite the other.
+  watch(quick, () => { if (ready.value) begin() })
+
+  function begin(): void {
+    const about = edit() === null ? (quick() ? 'report-only' : 'pack') : `pack.${edit()}`
+    pack.begin(draftKey(user, network(), about), editing.data.value ?? null)
+  }
 
   function send(): Promise<boolean> {
     form.values.deviceTime ??= new Date().toISOString()

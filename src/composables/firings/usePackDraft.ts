@@ -37,6 +37,8 @@ export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: l
   /** Takes up what was kept under this key, or begins anew (from a firing, to correct its load). */
   function begin(storageKey: string, firing: FiringDetail | null): void {
     key = storageKey
+    filled.localDate = null
+    filled.kilnNumber = null
     const before = readDraft<PackDraft>(key, 1)
     // A kept correction of a load that has changed since would undo that change.
     const usable = before && (!firing || before.draft.base === firing.revision) ? before : null
