@@ -25,8 +25,10 @@ export async function dev(settings) {
   const clientPort = (await isFree(VITE_PORT)) ? VITE_PORT : await freePort()
   const address = addressOf('127.0.0.1', clientPort)
   lock.tell({ host: settings.host, port, address })
-  await alone(installPackages)
-  const opened = await openOrGiven(settings, lock, settings.demo === 'off' ? 'off' : 'due')
+  const [opened] = await Promise.all([
+    openOrGiven(settings, lock, settings.demo === 'off' ? 'off' : 'due'),
+    alone(installPackages),
+  ])
   const env = serverEnv({
     settings,
     port,

@@ -65,11 +65,14 @@ export async function start(settings) {
   sessionSecret(settings)
   const address = settings.baseUrlGiven ? settings.baseUrl : addressOf(settings.host, port)
   lock.tell({ host: settings.host, port, address })
-  await alone(async (project) => {
-    await installPackages(project)
-    await buildStale(project)
-  })
-  const opened = await openOrGiven(settings, lock, settings.demo === 'off' ? 'off' : 'due')
+  // Neither needs the other, and on a fresh machine each takes a while.
+  const [opened] = await Promise.all([
+    openOrGiven(settings, lock, settings.demo === 'off' ? 'off' : 'due'),
+    alone(async (project) => {
+      await installPackages(project)
+      await buildStale(project)
+    }),
+  ])
   const env = serverEnv({ settings, port, databaseUrl: opened.url, demo: false })
   await step('Bringing the database up to date', 'Database is up to date', () => migrateBuilt(env))
   const demo = await prepareDemo({

@@ -116,12 +116,15 @@ function removeKilledRuns() {
 
 async function runKinds(kinds, extra, bench) {
   const needs = (some) => kinds.some((kind) => some.includes(kind))
-  await alone(async (project) => {
+  const prepare = alone(async (project) => {
     await installPackages(project)
     if (needs(BUILT_KINDS)) await buildStale(project)
   })
-  if (kinds.includes('e2e')) await needChromium()
-  const database = needs(DATABASE_KINDS) ? await openTemporary(bench) : null
+  const provide = async () => {
+    if (kinds.includes('e2e')) await needChromium()
+    return needs(DATABASE_KINDS) ? openTemporary(bench) : null
+  }
+  const [database] = await Promise.all([provide(), prepare])
   const vitestKinds = kinds.filter((kind) => VITEST_KINDS.includes(kind))
   const [checked, tested] = await Promise.all([
     runChecks(kinds, bench),
