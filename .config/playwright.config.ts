@@ -45,6 +45,8 @@ export default defineConfig({
     { name: 'desk', use: { viewport: { width: 1280, height: 800 } } },
     {
       name: 'phone',
+      // The chain goes from the phone to the desk by itself.
+      testIgnore: '**/chain.spec.ts',
       use: {
         viewport: { width: 390, height: 844 },
         deviceScaleFactor: 2,
