@@ -7,7 +7,9 @@ import { plural } from '../server/shared/plural.js'
 export async function rollUp({ networkId, deps, progress }: JobContext): Promise<string> {
   const scope = await systemScope(networkId)
   if (!scope) return 'The network is gone.'
-  const { firings, differences } = await checkRollups(scope, deps, (done, all) => progress((100 * done) / all))
+  const { firings, differences } = await checkRollups(scope, deps, (done, all) =>
+    progress((100 * done) / all),
+  )
   const counted = `Counted ${plural(firings, 'firing')} again`
   if (differences === 0) return `${counted}: all totals are right.`
   deps.logger.warn({ networkId, differences }, 'roll-ups differed from the lots')

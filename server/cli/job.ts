@@ -44,8 +44,10 @@ function read(args: string[]): Asked {
   })
   const ofNetworks = JOBS.filter((each) => each.of === 'network').map((each) => each.job)
   const [job, ...more] = positionals
-  if (job === undefined || more.length > 0) throw new UsageError(`Name one job: ${ofNetworks.join(' or ')}.`)
-  if (jobFacts(job)?.of !== 'network') throw new UsageError(`There is no job "${job}"; there are ${ofNetworks.join(' and ')}.`)
+  if (job === undefined || more.length > 0)
+    throw new UsageError(`Name one job: ${ofNetworks.join(' or ')}.`)
+  if (jobFacts(job)?.of !== 'network')
+    throw new UsageError(`There is no job "${job}"; there are ${ofNetworks.join(' and ')}.`)
   if (!values.network) throw new UsageError('Say whose with --network SLUG.')
   return { job, network: values.network, json: values.json }
 }
@@ -53,8 +55,11 @@ function read(args: string[]): Asked {
 async function scopeOf(slug: string): Promise<Scope> {
   const scope = await systemScope(slug)
   if (scope) return scope
-  const slugs = (await Network.findAll({ attributes: ['slug'], order: ['slug'], raw: true })).map((network) => network.slug)
-  const there = slugs.length > 0 ? `there are: ${slugs.slice(0, 20).join(', ')}` : 'there is none yet'
+  const slugs = (await Network.findAll({ attributes: ['slug'], order: ['slug'], raw: true })).map(
+    (network) => network.slug,
+  )
+  const there =
+    slugs.length > 0 ? `there are: ${slugs.slice(0, 20).join(', ')}` : 'there is none yet'
   throw new UsageError(`There is no network "${slug}"; ${there}.`)
 }
 
@@ -68,11 +73,17 @@ async function runHere(held: HeldSlot, deps: Deps): Promise<void> {
   process.once('SIGINT', stop)
   process.once('SIGTERM', stop)
   let shown = -10
-  await runSlot(held, (RUNNERS as Partial<typeof RUNNERS>)[held.job as keyof typeof RUNNERS], deps, stopping.signal, (percent) => {
-    if (percent < 100 && percent - shown < 10) return
-    shown = percent
-    showProgress(held.job, percent)
-  })
+  await runSlot(
+    held,
+    (RUNNERS as Partial<typeof RUNNERS>)[held.job as keyof typeof RUNNERS],
+    deps,
+    stopping.signal,
+    (percent) => {
+      if (percent < 100 && percent - shown < 10) return
+      shown = percent
+      showProgress(held.job, percent)
+    },
+  )
 }
 
 /** Another process has it: look on until it has ended or waits again. */
@@ -85,7 +96,12 @@ function print(run: JobRunRow, json: boolean): number {
   const outcome = run.outcome ?? run.error ?? ''
   if (json) console.log(JSON.stringify(presentRun(run), null, 2))
   else if (run.status === 'done') console.log(outcome)
-  else console.error(run.status === 'failed' ? `Failed: ${outcome}` : `Not done: ${outcome || 'it waits'} (it will be tried again).`)
+  else
+    console.error(
+      run.status === 'failed'
+        ? `Failed: ${outcome}`
+        : `Not done: ${outcome || 'it waits'} (it will be tried again).`,
+    )
   return run.status === 'done' ? 0 : 1
 }
 
@@ -95,7 +111,12 @@ async function main(args: string[]): Promise<number> {
   const config = readConfig({ SESSION_SECRET: randomBytes(32).toString('hex'), ...process.env })
   const sequelize = createDatabase(config.databaseUrl, { poolMax: 4 })
   try {
-    const deps: Deps = { sequelize, clock: systemClock, logger: createLogger(config.logLevel, 'stderr'), config }
+    const deps: Deps = {
+      sequelize,
+      clock: systemClock,
+      logger: createLogger(config.logLevel, 'stderr'),
+      config,
+    }
     const scope = await scopeOf(asked.network)
     const { id } = await requestRun(scope, asked.job, deps)
     const held = await claimSlot(id, ownerName(), deps)
@@ -111,7 +132,8 @@ async function main(args: string[]): Promise<number> {
 try {
   process.exitCode = await main(process.argv.slice(2))
 } catch (error) {
-  const usage = error instanceof UsageError || (error as { code?: string }).code?.startsWith('ERR_PARSE_ARGS')
+  const usage =
+    error instanceof UsageError || (error as { code?: string }).code?.startsWith('ERR_PARSE_ARGS')
   console.error((error as Error).message)
   if (usage) console.error(USAGE)
   process.exitCode = usage ? 2 : 1

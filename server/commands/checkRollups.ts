@@ -25,7 +25,12 @@ export async function checkRollups(
   { sequelize }: Pick<Deps, 'sequelize'>,
   onKiln: (done: number, all: number) => Promise<void> = async () => undefined,
 ): Promise<RollupCheck> {
-  const kilns = await Kiln.findAll({ where: { networkId }, attributes: ['id'], order: ['id'], raw: true })
+  const kilns = await Kiln.findAll({
+    where: { networkId },
+    attributes: ['id'],
+    order: ['id'],
+    raw: true,
+  })
   const check: RollupCheck = { firings: 0, differences: 0 }
   for (const [index, { id }] of kilns.entries()) {
     const { firings, differences } = await inTransaction(sequelize, async (transaction) => {

@@ -11,7 +11,10 @@ import { jobFacts } from '../shared/jobs.js'
 const listeners = new WeakMap<Sequelize, Set<() => void>>()
 
 /** Calls back when a run is requested in this process, so that it starts at once. Answers how to stop listening. */
-export function whenRunRequested({ sequelize }: Pick<Deps, 'sequelize'>, listener: () => void): () => void {
+export function whenRunRequested(
+  { sequelize }: Pick<Deps, 'sequelize'>,
+  listener: () => void,
+): () => void {
   const all = listeners.get(sequelize) ?? new Set()
   listeners.set(sequelize, all.add(listener))
   return () => all.delete(listener)
@@ -44,7 +47,11 @@ async function pendingRun(job: string, networkId: number): Promise<number | unde
  * Writes the row down first and looks second: of two that do so at once, at least one sees both, and
  * the later row gives way. A lock would have to span processes.
  */
-async function insertRun({ networkId, userId }: Scope, job: string, { clock }: Deps): Promise<number> {
+async function insertRun(
+  { networkId, userId }: Scope,
+  job: string,
+  { clock }: Deps,
+): Promise<number> {
   const mine = await insertSlot({ job, networkId, requestedBy: userId }, clock.now())
   const first = await pendingRun(job, networkId)
   if (first === undefined || first >= mine) return mine

@@ -1,12 +1,13 @@
 import { createHash } from 'node:crypto'
 import type { Deps } from '../deps.js'
 import type { Scope } from '../policies/index.js'
+import { lastReportedDay } from '../queries/lastReportedDay.js'
 import { addDays, localTime } from '../shared/zonedTime.js'
 import { studyInWorker } from '../study/inWorker.js'
 import { storeStudy } from './storeStudy.js'
 
 export interface StudyRunOptions {
-  /** Local days of the network that are looked at, today being the last. */
+  /** Local days of the network that are looked at, up to today or to where its book ends. */
   windowDays?: number
   /** Per cent. */
   onProgress?: (percent: number) => void
@@ -25,6 +26,8 @@ export interface StudySummary {
 }
 
 const WINDOW_DAYS = 365
+/** A book without a firing for so long has ended. */
+const QUIET_DAYS = 30
 /** Reported firings that a studio needs for a study of its own. */
 export const LEAST_FIRINGS = 20
 const CONFIDENCE = 0.95
@@ -38,16 +41,26 @@ function seedOf(scope: Scope): number {
   return createHash('sha256').update(scope.network.uid).digest().readUInt32BE(0)
 }
 
+/** Today, unless the book ended a while ago (an imported one, say): then its last day, lest nothing is looked at. */
+async function windowEnd(scope: Scope, today: string): Promise<string> {
+  const last = await lastReportedDay(scope, today)
+  return last !== null && last < addDays(today, -QUIET_DAYS) ? last : today
+}
+
 /**
  * Studies the lots of a network over the window and stores the numbers: for the network, and for each
  * studio with enough firings. The computing is done in a thread of its own.
  * @returns the scopes studied, the network first
  * @throws when the lots cannot be read, or with the reason of `signal`; nothing is stored then
  */
-export async function runStudy(scope: Scope, deps: Deps, options: StudyRunOptions = {}): Promise<StudySummary[]> {
+export async function runStudy(
+  scope: Scope,
+  deps: Deps,
+  options: StudyRunOptions = {},
+): Promise<StudySummary[]> {
   const { windowDays = WINDOW_DAYS, onProgress, signal } = options
   const startedAt = deps.clock.now()
-  const windowTo = localTime(startedAt, scope.network.timeZone).day
+  const windowTo = await windowEnd(scope, localTime(startedAt, scope.network.timeZone).day)
   const windowFrom = addDays(windowTo, 1 - windowDays)
   const seed = seedOf(scope)
   const answer = await studyInWorker(
@@ -63,7 +76,12 @@ export async function runStudy(scope: Scope, deps: Deps, options: StudyRunOption
     },
     { signal, onProgress: (percent) => onProgress?.((percent * COMPUTED) / 100) },
   )
-  const parameters = { windowDays, leastFirings: LEAST_FIRINGS, confidence: CONFIDENCE, keepQ: KEEP_Q }
+  const parameters = {
+    windowDays,
+    leastFirings: LEAST_FIRINGS,
+    confidence: CONFIDENCE,
+    keepQ: KEEP_Q,
+  }
   signal?.throwIfAborted()
   const stored = await storeStudy(
     scope,

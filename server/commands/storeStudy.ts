@@ -30,12 +30,24 @@ export interface StoredLevelRow extends FindingLevelRow {
 const FEW_FIRINGS = 5
 
 /** Stores the numbers of every scope with their findings in one transaction: all of the night's, or none. */
-export async function storeStudy(scope: Scope, run: StudyRun, answer: StudyAnswer, deps: Deps): Promise<Study[]> {
+export async function storeStudy(
+  scope: Scope,
+  run: StudyRun,
+  answer: StudyAnswer,
+  deps: Deps,
+): Promise<Study[]> {
   const names = await levelNames(scope)
   return inTransaction(deps.sequelize, async (transaction) => {
     const stored: Study[] = []
     for (const result of answer.scopes) {
-      stored.push(await storeScope(scope, { run, watermark: answer.watermark, result, names }, deps, transaction))
+      stored.push(
+        await storeScope(
+          scope,
+          { run, watermark: answer.watermark, result, names },
+          deps,
+          transaction,
+        ),
+      )
     }
     return stored
   })
@@ -48,16 +60,37 @@ interface OfScope {
   names: LevelNames
 }
 
-async function storeScope(scope: Scope, { run, watermark, result, names }: OfScope, deps: Deps, transaction: Transaction): Promise<Study> {
+async function storeScope(
+  scope: Scope,
+  { run, watermark, result, names }: OfScope,
+  deps: Deps,
+  transaction: Transaction,
+): Promise<Study> {
   const { networkId } = scope
   const { studioId } = result
   const { firings, lots, pieces, comparisons, findings } = result.result
   const study = await Study.create(
-    { ...run, networkId, uid: v7(), studioId, firings, lots, pieces, comparisons, findings: findings.length, watermark, codeVersion: VERSION },
+    {
+      ...run,
+      networkId,
+      uid: v7(),
+      studioId,
+      firings,
+      lots,
+      pieces,
+      comparisons,
+      findings: findings.length,
+      watermark,
+      codeVersion: VERSION,
+    },
     { transaction },
   )
   const identities = findings.map((finding) => identityOf(studioId, finding))
-  const seen = await firstSeen(scope, { studioId, identities }, { sequelize: deps.sequelize, transaction })
+  const seen = await firstSeen(
+    scope,
+    { studioId, identities },
+    { sequelize: deps.sequelize, transaction },
+  )
   await Finding.bulkCreate(
     findings.map((finding, index) => {
       const identity = identities[index] ?? ''
@@ -77,7 +110,10 @@ async function storeScope(scope: Scope, { run, watermark, result, names }: OfSco
 }
 
 /** Where, which fault, which level: the same from night to night. */
-export function identityOf(studioId: number | null, { fault, factors, levels }: Pick<Found, 'fault' | 'factors' | 'levels'>): string {
+export function identityOf(
+  studioId: number | null,
+  { fault, factors, levels }: Pick<Found, 'fault' | 'factors' | 'levels'>,
+): string {
   const where = studioId === null ? 'network' : `studio=${studioId}`
   return [where, fault, ...factors.map((factor, index) => `${factor}=${levels[index]}`)].join('|')
 }
@@ -91,7 +127,10 @@ function columnsOf(finding: Found, names: LevelNames) {
     levelId: level ?? 0,
     pairFactor,
     pairLevelId: pairLevel ?? null,
-    comparison: finding.comparison === 'within-firings' ? ('within-firing' as const) : ('between-firings' as const),
+    comparison:
+      finding.comparison === 'within-firings'
+        ? ('within-firing' as const)
+        : ('between-firings' as const),
     ratio: finding.ratio,
     lowerLimit: finding.lower,
     upperLimit: finding.upper,
@@ -114,18 +153,37 @@ function tableOf(finding: Found, names: LevelNames): StoredLevelRow[] {
   const own = finding.levels.join('|')
   return finding.table
     .map((line) => ({ line, exposed: line.level.join('|') === own }))
-    .sort((a, b) => Number(b.exposed) - Number(a.exposed) || (b.line.rate ?? 0) - (a.line.rate ?? 0))
+    .sort(
+      (a, b) => Number(b.exposed) - Number(a.exposed) || (b.line.rate ?? 0) - (a.line.rate ?? 0),
+    )
     .map(({ line, exposed }) => rowOf(line, exposed, finding.factors, names))
 }
 
-function rowOf(line: LevelLine, exposed: boolean, factors: readonly string[], names: LevelNames): StoredLevelRow {
+function rowOf(
+  line: LevelLine,
+  exposed: boolean,
+  factors: readonly string[],
+  names: LevelNames,
+): StoredLevelRow {
   const levels = line.level.flatMap((key, index) => names(factors[index] ?? '', Number(key)) ?? [])
   const { events, units, firings, rate, lower, upper } = line
-  const note = units === 0 ? 'none' : firings < 2 ? 'one-firing' : firings < FEW_FIRINGS ? 'few-firings' : 'ok'
+  const note =
+    units === 0 ? 'none' : firings < 2 ? 'one-firing' : firings < FEW_FIRINGS ? 'few-firings' : 'ok'
   return {
-    level: { uid: levels.length === 1 ? (levels[0]?.uid ?? null) : null, name: levels.map(({ name }) => name).join(' on ') },
+    level: {
+      uid: levels.length === 1 ? (levels[0]?.uid ?? null) : null,
+      name: levels.map(({ name }) => name).join(' on '),
+    },
     exposed,
-    rate: { events, pieces: units, firings, rate: note === 'one-firing' ? null : rate, lower, upper, note },
+    rate: {
+      events,
+      pieces: units,
+      firings,
+      rate: note === 'one-firing' ? null : rate,
+      lower,
+      upper,
+      note,
+    },
     uids: levels.map(({ uid }) => uid),
   }
 }

@@ -56,7 +56,13 @@ export function presentFindingDetail(finding: FindingWithStudy): FindingDetail {
 }
 
 /** Filters of the list of firings (contract/firings.ts) that hold the level and the fault, in the study's window. */
-function firingFilters({ study, fault, factor, level, pair }: FindingWithStudy): Record<string, string> {
+function firingFilters({
+  study,
+  fault,
+  factor,
+  level,
+  pair,
+}: FindingWithStudy): Record<string, string> {
   const kinds = faultRule(fault)?.seenIn ?? FIRING_KINDS
   return {
     status: 'reported',
@@ -65,6 +71,8 @@ function firingFilters({ study, fault, factor, level, pair }: FindingWithStudy):
     fault,
     ...(kinds.length < FIRING_KINDS.length && { kind: kinds.join(',') }),
     ...(study.studio && { studio: study.studio.uid }),
-    ...(factor === 'kiln' ? { kiln: level.uid } : { level: [level, ...(pair ? [pair.level] : [])].map(({ uid }) => uid).join(',') }),
+    ...(factor === 'kiln'
+      ? { kiln: level.uid }
+      : { level: [level, ...(pair ? [pair.level] : [])].map(({ uid }) => uid).join(',') }),
   }
 }

@@ -5,13 +5,20 @@ import { findingText } from '../shared/sentences/finding.js'
 
 /** Heading and value of every column of the findings' CSV. Numbers are whole, not rounded for reading. */
 const COLUMNS: readonly [string, (finding: FindingRow) => string | number | null][] = [
-  ['finding', (finding) => findingText({ ...finding, exposed: exposed(finding), unexposed: unexposed(finding) })],
+  [
+    'finding',
+    (finding) =>
+      findingText({ ...finding, exposed: exposed(finding), unexposed: unexposed(finding) }),
+  ],
   ['studio', ({ studio }) => studio?.name ?? 'all studios'],
   ['fault', ({ fault }) => faultNode(fault)?.name ?? fault],
   ['factor', ({ factor }) => factorOf(factor)?.name ?? factor],
   ['level', ({ level }) => level.name],
   ['clay body of the pair', ({ pair }) => pair?.level.name ?? null],
-  ['compared', ({ comparison }) => (comparison === 'within-firing' ? 'inside firings' : 'between firings')],
+  [
+    'compared',
+    ({ comparison }) => (comparison === 'within-firing' ? 'inside firings' : 'between firings'),
+  ],
   ['ratio', ({ ratio }) => ratio],
   ['lower limit (95 %)', ({ lower }) => lower],
   ['upper limit (95 %)', ({ upper }) => upper],
@@ -26,8 +33,14 @@ const COLUMNS: readonly [string, (finding: FindingRow) => string | number | null
   ['first seen', ({ firstSeenOn }) => firstSeenOn],
 ]
 
-const exposed = ({ exposedEvents, exposedUnits }: FindingRow) => ({ events: exposedEvents, units: exposedUnits })
-const unexposed = ({ unexposedEvents, unexposedUnits }: FindingRow) => ({ events: unexposedEvents, units: unexposedUnits })
+const exposed = ({ exposedEvents, exposedUnits }: FindingRow) => ({
+  events: exposedEvents,
+  units: exposedUnits,
+})
+const unexposed = ({ unexposedEvents, unexposedUnits }: FindingRow) => ({
+  events: unexposedEvents,
+  units: unexposedUnits,
+})
 
 export const FINDING_CSV_HEADINGS = COLUMNS.map(([heading]) => heading)
 

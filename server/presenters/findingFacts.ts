@@ -79,7 +79,10 @@ export function checksFor(fault: string, factors: readonly string[]): SourcedTex
   const ways = known.flatMap(({ causes }) =>
     causes
       .filter(({ factor }) => asked.has(factor))
-      .map(({ cause, practice_lever, source }) => ({ text: `${cause}.${better(practice_lever)}`, source: sourceInWords(source) })),
+      .map(({ cause, practice_lever, source }) => ({
+        text: `${cause}.${better(practice_lever)}`,
+        source: sourceInWords(source),
+      })),
   )
   const naming = FACTS.get(fault)?.discriminating_tests.slice(0, MOST_NAME_CHECKS) ?? []
   const names = naming.map(({ check, reading, source }) => ({
@@ -102,9 +105,16 @@ const CODES: SourcedText = {
 
 /** Where work with such ware can hurt someone; empty where nothing is known. */
 export function cautionsFor(fault: string): SourcedText[] {
-  const own = FACTS.get(fault)?.cautions.map(({ fact, source }) => ({ text: fact, source: sourceInWords(source) })) ?? []
+  const own =
+    FACTS.get(fault)?.cautions.map(({ fact, source }) => ({
+      text: fact,
+      source: sourceInWords(source),
+    })) ?? []
   const rule = faultRule(fault)
-  const note = own.length === 0 && rule?.safetyNote ? [{ text: rule.safetyNote, source: sourceInWords(rule.source) }] : []
+  const note =
+    own.length === 0 && rule?.safetyNote
+      ? [{ text: rule.safetyNote, source: sourceInWords(rule.source) }]
+      : []
   const all = [...own, ...note]
   return all.length === 0 ? [] : [...all, CODES]
 }

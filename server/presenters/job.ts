@@ -19,7 +19,11 @@ export function presentRun(run: JobRunRow): JobRun {
 }
 
 /** A job with its schedule in the network's zone, its next time after `now` and its newest run. */
-export function presentJob(facts: JobFacts, last: JobRunRow | undefined, { timeZone, now }: { timeZone: string; now: Date }): Jobs['jobs'][number] {
+export function presentJob(
+  facts: JobFacts,
+  last: JobRunRow | undefined,
+  { timeZone, now }: { timeZone: string; now: Date },
+): Jobs['jobs'][number] {
   return {
     job: facts.job,
     name: facts.name,

@@ -83,12 +83,19 @@ export const NETWORK_SCOPE = 'network'
  * finding about a studio's own level or kiln is there only for those who may read that studio.
  * @returns null when the scope is not there or not to be read
  */
-export async function listFindings(scope: Scope, filters: FindingFilters): Promise<FindingList | null> {
+export async function listFindings(
+  scope: Scope,
+  filters: FindingFilters,
+): Promise<FindingList | null> {
   const { page = 1, pageSize = 25 } = filters
   const studios = await readableStudios(scope, filters.readable)
-  const studio = filters.scope === NETWORK_SCOPE ? null : studios.find(({ uid }) => uid === filters.scope)
+  const studio =
+    filters.scope === NETWORK_SCOPE ? null : studios.find(({ uid }) => uid === filters.scope)
   if (studio === undefined) return null
-  const scopes = [{ key: NETWORK_SCOPE, name: 'All studios' }, ...studios.map(({ uid, name }) => ({ key: uid, name }))]
+  const scopes = [
+    { key: NETWORK_SCOPE, name: 'All studios' },
+    ...studios.map(({ uid, name }) => ({ key: uid, name })),
+  ]
   const found = await Study.findOne({
     where: { networkId: scope.networkId, studioId: studio?.id ?? null },
     order: [['id', 'DESC']],
@@ -97,15 +104,28 @@ export async function listFindings(scope: Scope, filters: FindingFilters): Promi
   if (!found) return { study: null, rows: [], total: 0, page, pageSize, scopes }
   const { where, replacements } = conditions(scope, found.id, filters)
   const { sequelize } = Network
-  const [counted] = await sequelize!.query<{ total: number }>(`SELECT COUNT(*) AS total ${FROM} WHERE ${where}`, {
-    type: QueryTypes.SELECT,
-    replacements,
-  })
+  const [counted] = await sequelize!.query<{ total: number }>(
+    `SELECT COUNT(*) AS total ${FROM} WHERE ${where}`,
+    {
+      type: QueryTypes.SELECT,
+      replacements,
+    },
+  )
   const rows = await sequelize!.query<SelectedRow>(
     `${SELECT} ${FROM} WHERE ${where} ORDER BY f.q_value, f.p_value, f.exposed_events DESC, f.id LIMIT :limit OFFSET :offset`,
-    { type: QueryTypes.SELECT, replacements: { ...replacements, limit: pageSize, offset: (page - 1) * pageSize } },
+    {
+      type: QueryTypes.SELECT,
+      replacements: { ...replacements, limit: pageSize, offset: (page - 1) * pageSize },
+    },
   )
-  return { study: studyRow(found, studio), rows: rows.map(findingRow), total: Number(counted?.total ?? 0), page, pageSize, scopes }
+  return {
+    study: studyRow(found, studio),
+    rows: rows.map(findingRow),
+    total: Number(counted?.total ?? 0),
+    page,
+    pageSize,
+    scopes,
+  }
 }
 
 export interface FindingWithStudy extends FindingRow {
@@ -115,12 +135,19 @@ export interface FindingWithStudy extends FindingRow {
 }
 
 /** One finding that the person may read, with its study and table; null otherwise. */
-export async function findFinding(scope: Scope, uid: string, readable: readonly number[]): Promise<FindingWithStudy | null> {
+export async function findFinding(
+  scope: Scope,
+  uid: string,
+  readable: readonly number[],
+): Promise<FindingWithStudy | null> {
   const { networkId } = scope
-  const [whole] = await Network.sequelize!.query<SelectedRow & { levels: StoredLevels }>(`${SELECT}, f.levels ${FROM} WHERE f.network_id = :networkId AND f.uid = :uid AND ${VISIBLE}`, {
-    type: QueryTypes.SELECT,
-    replacements: { networkId, uid, readable: listOf(readable) },
-  })
+  const [whole] = await Network.sequelize!.query<SelectedRow & { levels: StoredLevels }>(
+    `${SELECT}, f.levels ${FROM} WHERE f.network_id = :networkId AND f.uid = :uid AND ${VISIBLE}`,
+    {
+      type: QueryTypes.SELECT,
+      replacements: { networkId, uid, readable: listOf(readable) },
+    },
+  )
   if (!whole) return null
   const { levels, ...selected } = whole
   const study = await Study.findOne({ where: { networkId, id: selected.studyId }, raw: true })
@@ -172,7 +199,11 @@ function listOf(ids: readonly number[]): number[] {
   return ids.length > 0 ? [...ids] : [0]
 }
 
-function conditions({ networkId }: Scope, studyId: number, { readable, fault, factor, q, direction }: FindingFilters) {
+function conditions(
+  { networkId }: Scope,
+  studyId: number,
+  { readable, fault, factor, q, direction }: FindingFilters,
+) {
   const where = ['f.network_id = :networkId', 'f.study_id = :studyId', VISIBLE]
   if (fault !== undefined) where.push('f.fault IN (:faults)')
   if (factor !== undefined) where.push('(f.factor = :factor OR f.pair_factor = :factor)')
@@ -181,22 +212,44 @@ function conditions({ networkId }: Scope, studyId: number, { readable, fault, fa
   if (direction === 'raised') where.push('(f.ratio IS NULL OR f.ratio > 1)')
   if (direction === 'lowered') where.push('f.ratio <= 1')
   const faults = fault === undefined ? [] : withDescendants(fault)
-  const replacements = { networkId, studyId, readable: listOf(readable), faults: faults.length > 0 ? faults : [''], factor, q }
+  const replacements = {
+    networkId,
+    studyId,
+    readable: listOf(readable),
+    faults: faults.length > 0 ? faults : [''],
+    factor,
+    q,
+  }
   return { where: where.join(' AND '), replacements }
 }
 
 function findingRow(selected: SelectedRow): FindingRow {
-  const { levelUid, levelName, pairFactor, pairUid, pairName, studioUid, studioName, ...row } = selected
+  const { levelUid, levelName, pairFactor, pairUid, pairName, studioUid, studioName, ...row } =
+    selected
   return {
     ...row,
     studio: studioUid === null ? null : { uid: studioUid, name: studioName ?? '' },
     level: { uid: levelUid, name: levelName },
-    pair: pairFactor === null || pairUid === null ? null : { factor: pairFactor, level: { uid: pairUid, name: pairName ?? '' } },
+    pair:
+      pairFactor === null || pairUid === null
+        ? null
+        : { factor: pairFactor, level: { uid: pairUid, name: pairName ?? '' } },
   }
 }
 
 function studyRow(study: Study, studio: NamedRow | null): StudyRow {
-  const { id, uid, windowFrom, windowTo, firings, lots, pieces, comparisons, findings, finishedAt } = study
+  const {
+    id,
+    uid,
+    windowFrom,
+    windowTo,
+    firings,
+    lots,
+    pieces,
+    comparisons,
+    findings,
+    finishedAt,
+  } = study
   return {
     id,
     uid,
@@ -238,12 +291,27 @@ async function visibleLevels(
     Level.findAll({ where, attributes, raw: true }),
     Kiln.findAll({ where, attributes, raw: true }),
   ])
-  const known = new Map([...levels, ...kilns].map(({ uid, name, studioId }) => [uid, { name, studioId: studioId ?? null }]))
+  const known = new Map(
+    [...levels, ...kilns].map(({ uid, name, studioId }) => [
+      uid,
+      { name, studioId: studioId ?? null },
+    ]),
+  )
   return rows.flatMap(({ level, exposed, rate, uids: own }) => {
     const found = own.map((uid) => known.get(uid))
-    const hidden = found.some((each) => !each || (each.studioId !== null && !readable.includes(each.studioId)))
-    const thin = factor === 'class' && (rate.pieces < LEAST_OF_CLASS.pieces || rate.firings < LEAST_OF_CLASS.firings)
+    const hidden = found.some(
+      (each) => !each || (each.studioId !== null && !readable.includes(each.studioId)),
+    )
+    const thin =
+      factor === 'class' &&
+      (rate.pieces < LEAST_OF_CLASS.pieces || rate.firings < LEAST_OF_CLASS.firings)
     if (hidden || own.length === 0 || thin) return []
-    return [{ level: { uid: level.uid, name: found.map((each) => each?.name).join(' on ') }, exposed, rate }]
+    return [
+      {
+        level: { uid: level.uid, name: found.map((each) => each?.name).join(' on ') },
+        exposed,
+        rate,
+      },
+    ]
   })
 }

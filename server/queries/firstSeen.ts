@@ -13,7 +13,11 @@ export async function firstSeen(
     `SELECT identity, DATE_FORMAT(MIN(first_seen_on), '%Y-%m-%d') AS day FROM findings
      WHERE network_id = :networkId AND studio_id <=> :studioId AND identity IN (:identities)
      GROUP BY identity`,
-    { type: QueryTypes.SELECT, replacements: { networkId, studioId, identities: [...identities] }, transaction },
+    {
+      type: QueryTypes.SELECT,
+      replacements: { networkId, studioId, identities: [...identities] },
+      transaction,
+    },
   )
   return new Map(rows.map(({ identity, day }) => [identity, day]))
 }

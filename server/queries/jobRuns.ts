@@ -19,7 +19,10 @@ export interface JobRunRow {
 
 async function withNames(slots: readonly JobSlot[]): Promise<JobRunRow[]> {
   const ids = [...new Set(slots.flatMap(({ requestedBy }) => requestedBy ?? []))]
-  const people = ids.length === 0 ? [] : await User.findAll({ where: { id: ids }, attributes: ['id', 'name'], raw: true })
+  const people =
+    ids.length === 0
+      ? []
+      : await User.findAll({ where: { id: ids }, attributes: ['id', 'name'], raw: true })
   const names = new Map(people.map(({ id, name }) => [id, name]))
   return slots.map((slot) => ({
     id: slot.id,
@@ -38,16 +41,24 @@ async function withNames(slots: readonly JobSlot[]): Promise<JobRunRow[]> {
 
 /** The newest runs of the network's jobs, newest first. */
 export async function recentRuns({ networkId }: Scope, limit: number): Promise<JobRunRow[]> {
-  return withNames(await JobSlot.findAll({ where: { networkId }, order: [['id', 'DESC']], limit, raw: true }))
+  return withNames(
+    await JobSlot.findAll({ where: { networkId }, order: [['id', 'DESC']], limit, raw: true }),
+  )
 }
 
 /** The newest run of each of these jobs in the network; a job that never ran is missing. */
-export async function lastRuns({ networkId }: Scope, jobs: readonly string[]): Promise<Map<string, JobRunRow>> {
+export async function lastRuns(
+  { networkId }: Scope,
+  jobs: readonly string[],
+): Promise<Map<string, JobRunRow>> {
   const newest = await JobSlot.sequelize!.query<{ id: number }>(
     'SELECT MAX(id) AS id FROM job_slots WHERE network_id = :networkId AND job IN (:jobs) GROUP BY job',
     { type: QueryTypes.SELECT, replacements: { networkId, jobs: [...jobs] } },
   )
-  const slots = await JobSlot.findAll({ where: { networkId, id: { [Op.in]: newest.map(({ id }) => id) } }, raw: true })
+  const slots = await JobSlot.findAll({
+    where: { networkId, id: { [Op.in]: newest.map(({ id }) => id) } },
+    raw: true,
+  })
   return new Map((await withNames(slots)).map((run) => [run.job, run]))
 }
 

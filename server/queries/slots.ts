@@ -7,7 +7,9 @@ import type { Sequelize } from 'sequelize'
 export const REQUESTED = 'now:'
 
 /** Newest scheduled slot of each job and network. */
-export async function lastSlots(sequelize: Sequelize): Promise<{ job: string; networkId: number; slot: string }[]> {
+export async function lastSlots(
+  sequelize: Sequelize,
+): Promise<{ job: string; networkId: number; slot: string }[]> {
   return sequelize.query(
     `SELECT job, network_id AS networkId, MAX(slot) AS slot FROM job_slots
      WHERE slot NOT LIKE '${REQUESTED}%' GROUP BY job, network_id`,

@@ -17,6 +17,15 @@ export async function storedRollups(
   )
   return rows.map((row) => {
     const { studioId, kilnId: kiln, kind, month, factor, levelId, fault } = row
-    return { studioId, kilnId: kiln, kind, month, factor, levelId, fault, sums: SUM_COLUMNS.map((column) => Number(row[column])) }
+    return {
+      studioId,
+      kilnId: kiln,
+      kind,
+      month,
+      factor,
+      levelId,
+      fault,
+      sums: SUM_COLUMNS.map((column) => Number(row[column])),
+    }
   })
 }

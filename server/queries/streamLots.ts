@@ -72,7 +72,11 @@ export async function openLots(connection: Connection, window: LotWindow): Promi
   const values = [window.networkId, window.from, window.to]
   await connection.query('SET SESSION TRANSACTION ISOLATION LEVEL REPEATABLE READ')
   await connection.query('START TRANSACTION WITH CONSISTENT SNAPSHOT, READ ONLY')
-  const [watermark] = await numbers(connection, 'SELECT COALESCE(MAX(id), 0) FROM report_revisions WHERE network_id = ?', [window.networkId])
+  const [watermark] = await numbers(
+    connection,
+    'SELECT COALESCE(MAX(id), 0) FROM report_revisions WHERE network_id = ?',
+    [window.networkId],
+  )
   const [lots] = await numbers(connection, `SELECT COUNT(*) ${FROM}`, values)
   const levels = await readLevels(connection, window.networkId)
   return {
@@ -102,7 +106,9 @@ interface Levels {
 }
 
 async function readLevels(connection: Connection, networkId: number): Promise<Levels> {
-  const rows = await connection.query<[number, string, number | null, string | null, number | null, string | null][]>(
+  const rows = await connection.query<
+    [number, string, number | null, string | null, number | null, string | null][]
+  >(
     {
       sql: `SELECT id, factor, studio_id, code, merged_into_id, JSON_VALUE(attributes, '$.classLevel')
             FROM levels WHERE network_id = ?`,
@@ -166,7 +172,8 @@ function lossesOf(text: Cell) {
 /** One lot in the study's shape; levels are named by their id. */
 function lotRow(cells: readonly Cell[], levels: Levels) {
   const [firing, studio, kiln, kind, programme, temperature, wholeLoadFailed, ofFiring] = cells
-  const [isRest, pieces, turnedAway, notLookedAt, refireCount, ofLot, losses, ...columnIds] = cells.slice(8)
+  const [isRest, pieces, turnedAway, notLookedAt, refireCount, ofLot, losses, ...columnIds] =
+    cells.slice(8)
   const lot = pairs(ofLot ?? null, levels)
   columns.forEach((factor, index) => {
     const id = columnIds[index]
@@ -174,7 +181,8 @@ function lotRow(cells: readonly Cell[], levels: Levels) {
   })
   const classLevel = levels.levelOfClass.get(lot.get('class')?.[0] ?? 0)
   if (classLevel !== undefined && !lot.has('class_level')) lot.set('class_level', [classLevel])
-  const codeOf = (factor: string): string | null => levels.codes.get(lot.get(factor)?.[0] ?? 0) ?? null
+  const codeOf = (factor: string): string | null =>
+    levels.codes.get(lot.get(factor)?.[0] ?? 0) ?? null
   return {
     firing: Number(firing),
     studio: String(studio),
@@ -187,7 +195,11 @@ function lotRow(cells: readonly Cell[], levels: Levels) {
     notLookedAt: Number(notLookedAt),
     refireCount: Number(refireCount),
     levels: lotLevels(lot),
-    firingLevels: firingLevels(pairs(ofFiring ?? null, levels), { kiln, programme, temperature }, levels),
+    firingLevels: firingLevels(
+      pairs(ofFiring ?? null, levels),
+      { kiln, programme, temperature },
+      levels,
+    ),
     formingCode: codeOf('forming'),
     hasGlaze: hasGlaze(lot.get('glaze')?.length ?? 0, codeOf('glaze_sides')),
     hasJoint: hasJoint(lot.get('joining_practice')?.length ?? 0),

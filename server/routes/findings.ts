@@ -16,8 +16,14 @@ const network = z.string()
 /** More than a study keeps. */
 const ALL = 10_000
 
-async function listed(scope: Scope, filters: Omit<FindingFilters, 'readable'>): Promise<FindingList> {
-  const list = await listFindings(scope, { ...filters, readable: studiosWith(scope, 'findings.read') })
+async function listed(
+  scope: Scope,
+  filters: Omit<FindingFilters, 'readable'>,
+): Promise<FindingList> {
+  const list = await listFindings(scope, {
+    ...filters,
+    readable: studiosWith(scope, 'findings.read'),
+  })
   if (!list) throw notFound()
   return list
 }
@@ -45,7 +51,12 @@ export const findingRoutes = [
       const { study, rows } = await listed(scope, { ...query, pageSize: ALL })
       const name = `findings-${scope.network.slug}${study ? `-${study.windowTo}` : ''}.csv`
       res.type('text/csv').attachment(name)
-      res.send(stringify([FINDING_CSV_HEADINGS, ...rows.map(presentFindingCsv)], { bom: true, escape_formulas: true }))
+      res.send(
+        stringify([FINDING_CSV_HEADINGS, ...rows.map(presentFindingCsv)], {
+          bom: true,
+          escape_formulas: true,
+        }),
+      )
     },
   }),
   defineRoute({

@@ -20,7 +20,10 @@ export const jobRoutes = [
     handle: async ({ scope, deps }) => {
       const facts = JOBS.filter((job) => job.of === 'network')
       const [last, recent] = await Promise.all([
-        lastRuns(scope, facts.map(({ job }) => job)),
+        lastRuns(
+          scope,
+          facts.map(({ job }) => job),
+        ),
         recentRuns(scope, RECENT),
       ])
       const { timeZone } = scope.network

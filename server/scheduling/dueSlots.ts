@@ -31,13 +31,19 @@ export function dueSlots(
   zones: readonly NetworkZone[],
   lastSlots: ReadonlyMap<string, string>,
 ): DueSlot[] {
-  const installation = { networkId: INSTALLATION.networkId, timeZone: INSTALLATION.zone, since: new Date(0) }
+  const installation = {
+    networkId: INSTALLATION.networkId,
+    timeZone: INSTALLATION.zone,
+    since: new Date(0),
+  }
   return schedules.flatMap((schedule) =>
-    (schedule.of === 'installation' ? [installation] : zones).flatMap(({ networkId, timeZone, since }) => {
-      const { slot, at } = lastOccurrence(schedule.when, timeZone, now)
-      const last = lastSlots.get(slotKey(schedule.job, networkId))
-      const isDue = at > since && (last === undefined || slot > last)
-      return isDue ? [{ job: schedule.job, networkId, slot }] : []
-    }),
+    (schedule.of === 'installation' ? [installation] : zones).flatMap(
+      ({ networkId, timeZone, since }) => {
+        const { slot, at } = lastOccurrence(schedule.when, timeZone, now)
+        const last = lastSlots.get(slotKey(schedule.job, networkId))
+        const isDue = at > since && (last === undefined || slot > last)
+        return isDue ? [{ job: schedule.job, networkId, slot }] : []
+      },
+    ),
   )
 }

@@ -63,7 +63,9 @@ export function createScheduler(
 export function startScheduler(deps: Deps): { stop: () => Promise<void> } {
   const scheduler = createScheduler(deps)
   const guarded = (work: () => Promise<void>): void => {
-    work().catch((error: unknown) => deps.logger.error({ err: error }, 'the scheduler could not look for work'))
+    work().catch((error: unknown) =>
+      deps.logger.error({ err: error }, 'the scheduler could not look for work'),
+    )
   }
   // Not awaited: a long run must not keep the next minute from being written down.
   const task = cron.schedule('* * * * *', () => guarded(scheduler.tick))

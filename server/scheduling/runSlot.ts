@@ -10,7 +10,9 @@ class TakenOverError extends Error {
   }
 }
 
-export type RunEnd = { status: 'done'; outcome: string } | { status: 'failed' | 'released' | 'taken-over'; error: unknown }
+export type RunEnd =
+  | { status: 'done'; outcome: string }
+  | { status: 'failed' | 'released' | 'taken-over'; error: unknown }
 
 /**
  * Runs a job whose slot this process holds, renews the hold meanwhile and stores how it ended.
@@ -30,7 +32,9 @@ export async function runSlot(
   }
   // A renewal that fails once is made good by the next: the lease spans three.
   const timer = setInterval(() => {
-    hold().catch((error: unknown) => deps.logger.warn({ err: error, job: held.job }, 'a lease was not renewed'))
+    hold().catch((error: unknown) =>
+      deps.logger.warn({ err: error, job: held.job }, 'a lease was not renewed'),
+    )
   }, LEASE_MS / 3)
   timer.unref()
   try {
@@ -45,7 +49,9 @@ export async function runSlot(
         signal.throwIfAborted()
       },
     })
-    return (await finishSlot(held, outcome, deps)) ? { status: 'done', outcome } : { status: 'taken-over', error: new TakenOverError() }
+    return (await finishSlot(held, outcome, deps))
+      ? { status: 'done', outcome }
+      : { status: 'taken-over', error: new TakenOverError() }
   } catch (error) {
     return await endBadly(held, error, deps, stop, lost.signal)
   } finally {
@@ -53,13 +59,28 @@ export async function runSlot(
   }
 }
 
-async function endBadly(held: HeldSlot, error: unknown, deps: Deps, stop: AbortSignal, lost: AbortSignal): Promise<RunEnd> {
+async function endBadly(
+  held: HeldSlot,
+  error: unknown,
+  deps: Deps,
+  stop: AbortSignal,
+  lost: AbortSignal,
+): Promise<RunEnd> {
   if (lost.aborted) return { status: 'taken-over', error }
   if (stop.aborted) {
     await releaseSlot(held)
     return { status: 'released', error }
   }
-  deps.logger.error({ err: error, job: held.job, slot: held.slot, networkId: held.networkId, attempt: held.attempt }, 'a job failed')
+  deps.logger.error(
+    {
+      err: error,
+      job: held.job,
+      slot: held.slot,
+      networkId: held.networkId,
+      attempt: held.attempt,
+    },
+    'a job failed',
+  )
   await failSlot(held, error, deps)
   return { status: 'failed', error }
 }

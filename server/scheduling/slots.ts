@@ -19,7 +19,9 @@ const OUTCOME_LENGTH = 300
 
 /** A name for one scheduler of this process, as rows carry it (ascii, at most 60 characters). */
 export function ownerName(): string {
-  const host = hostname().replace(/[^\w.-]/g, '').slice(0, 30)
+  const host = hostname()
+    .replace(/[^\w.-]/g, '')
+    .slice(0, 30)
   return `${host}:${process.pid}:${randomBytes(6).toString('hex')}`
 }
 
@@ -53,7 +55,11 @@ function claimable(now: Date): WhereOptions<JobSlot> {
 }
 
 /** Takes this run if it may be claimed: one conditional update, the rows it changed are counted. */
-export async function claimSlot(id: number, owner: string, { clock }: Deps): Promise<HeldSlot | null> {
+export async function claimSlot(
+  id: number,
+  owner: string,
+  { clock }: Deps,
+): Promise<HeldSlot | null> {
   const now = clock.now()
   const [claimed] = await JobSlot.update(
     {
@@ -89,18 +95,35 @@ export async function claimNext(owner: string, deps: Deps): Promise<HeldSlot | n
 async function closeDeadSlots({ clock }: Deps): Promise<void> {
   const now = clock.now()
   await JobSlot.update(
-    { status: 'failed', owner: null, leaseUntil: null, finishedAt: now, error: `The server stopped during each of ${MOST_TRIES} tries.` },
-    { where: { status: 'running', leaseUntil: { [Op.lt]: now }, attempt: { [Op.gte]: MOST_TRIES } } },
+    {
+      status: 'failed',
+      owner: null,
+      leaseUntil: null,
+      finishedAt: now,
+      error: `The server stopped during each of ${MOST_TRIES} tries.`,
+    },
+    {
+      where: { status: 'running', leaseUntil: { [Op.lt]: now }, attempt: { [Op.gte]: MOST_TRIES } },
+    },
   )
 }
 
-async function changeHeld(held: HeldSlot, values: Parameters<typeof JobSlot.update>[0]): Promise<boolean> {
-  const [changed] = await JobSlot.update(values, { where: { id: held.id, owner: held.owner, status: 'running' } })
+async function changeHeld(
+  held: HeldSlot,
+  values: Parameters<typeof JobSlot.update>[0],
+): Promise<boolean> {
+  const [changed] = await JobSlot.update(values, {
+    where: { id: held.id, owner: held.owner, status: 'running' },
+  })
   return changed === 1
 }
 
 /** Holds the run for another lease, with its progress when given. False: it is no longer ours. */
-export async function renewSlot(held: HeldSlot, { clock }: Deps, percent?: number): Promise<boolean> {
+export async function renewSlot(
+  held: HeldSlot,
+  { clock }: Deps,
+  percent?: number,
+): Promise<boolean> {
   return changeHeld(held, {
     leaseUntil: new Date(clock.now().getTime() + LEASE_MS),
     ...(percent !== undefined && { progress: Math.max(0, Math.min(100, Math.round(percent))) }),
@@ -108,7 +131,11 @@ export async function renewSlot(held: HeldSlot, { clock }: Deps, percent?: numbe
 }
 
 /** Ends the run well. False: it was no longer ours. */
-export async function finishSlot(held: HeldSlot, outcome: string, { clock }: Deps): Promise<boolean> {
+export async function finishSlot(
+  held: HeldSlot,
+  outcome: string,
+  { clock }: Deps,
+): Promise<boolean> {
   return changeHeld(held, {
     status: 'done',
     owner: null,
@@ -126,13 +153,32 @@ export async function failSlot(held: HeldSlot, error: unknown, { clock }: Deps):
   const message = (error instanceof Error ? error.message : String(error)).slice(0, ERROR_LENGTH)
   const pause = PAUSES_MS[held.attempt - 1]
   if (held.attempt >= MOST_TRIES || pause === undefined) {
-    return changeHeld(held, { status: 'failed', owner: null, leaseUntil: null, error: message, finishedAt: now })
+    return changeHeld(held, {
+      status: 'failed',
+      owner: null,
+      leaseUntil: null,
+      error: message,
+      finishedAt: now,
+    })
   }
   const notBefore = new Date(now.getTime() + pause)
-  return changeHeld(held, { status: 'waiting', owner: null, leaseUntil: null, error: message, notBefore })
+  return changeHeld(held, {
+    status: 'waiting',
+    owner: null,
+    leaseUntil: null,
+    error: message,
+    notBefore,
+  })
 }
 
 /** Gives the run back, as if it had not been tried: this server stops. */
 export async function releaseSlot(held: HeldSlot): Promise<boolean> {
-  return changeHeld(held, { status: 'waiting', owner: null, leaseUntil: null, attempt: held.attempt - 1, progress: 0, startedAt: null })
+  return changeHeld(held, {
+    status: 'waiting',
+    owner: null,
+    leaseUntil: null,
+    attempt: held.attempt - 1,
+    progress: 0,
+    startedAt: null,
+  })
 }

@@ -22,21 +22,24 @@ export const JOBS: readonly JobFacts[] = [
   {
     job: 'study',
     name: 'Study',
-    description: 'Compares what the lots had in common with what they lost, for the network and each of its studios, and stores the findings.',
+    description:
+      'Compares what the lots had in common with what they lost, for the network and each of its studios, and stores the findings.',
     when: { every: 'night', minutes: at(2, 15) },
     of: 'network',
   },
   {
     job: 'roll-up',
     name: 'Check of the totals',
-    description: 'Counts the totals behind the loss rates again from the lots and puts right what differs.',
+    description:
+      'Counts the totals behind the loss rates again from the lots and puts right what differs.',
     when: { every: 'week', weekday: 0, minutes: at(3, 0) },
     of: 'network',
   },
   {
     job: 'tidy',
     name: 'Tidying',
-    description: 'Removes sessions and one-time links that have expired, old sign-in attempts and old records of runs.',
+    description:
+      'Removes sessions and one-time links that have expired, old sign-in attempts and old records of runs.',
     when: { every: 'night', minutes: at(3, 30) },
     of: 'installation',
   },

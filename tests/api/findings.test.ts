@@ -8,7 +8,14 @@ import type { FindingView } from '../../server/contract/findings.js'
 import type { Level, Network, Studio, User } from '../../server/models/index.js'
 import { createTestApp, fill, PATHS, signedIn } from '../support/api.js'
 import type { Agent } from '../support/api.js'
-import { makeLevel, makeMembership, makeNetwork, makePerson, makeScope, makeStudio } from '../support/factories.js'
+import {
+  makeLevel,
+  makeMembership,
+  makeNetwork,
+  makePerson,
+  makeScope,
+  makeStudio,
+} from '../support/factories.js'
 import { plantFirings } from '../support/plantedFirings.js'
 
 interface World {
@@ -26,7 +33,10 @@ interface World {
 
 async function world(): Promise<World> {
   const network = await makeNetwork()
-  const [quay, yard] = [await makeStudio({ network, name: 'Quayside' }), await makeStudio({ network, name: 'Old Yard' })]
+  const [quay, yard] = [
+    await makeStudio({ network, name: 'Quayside' }),
+    await makeStudio({ network, name: 'Old Yard' }),
+  ]
   const buff = await makeLevel({ network, name: 'Buff stoneware' })
   const own = await makeLevel({ studio: yard, name: 'Yard blend' })
   const { risky } = await plantFirings({ studio: quay, lastDay: '2026-03-09', safe: buff })
@@ -54,14 +64,16 @@ function readWorld(): Promise<World> {
 }
 
 const listPath = ({ network }: World) => fill(PATHS.findings, { network: network.slug })
-const onePath = ({ network }: World, finding: string) => fill(PATHS.finding, { network: network.slug, finding })
+const onePath = ({ network }: World, finding: string) =>
+  fill(PATHS.finding, { network: network.slug, finding })
 
 async function list(browser: Agent, at: World, query: Record<string, string> = {}) {
   const { body } = await browser.get(listPath(at)).query(query).expect(200)
   return findingsOutput.parse(body)
 }
 
-const about = (rows: readonly FindingView[], level: Level) => rows.filter((row) => row.level.uid === level.uid)
+const about = (rows: readonly FindingView[], level: Level) =>
+  rows.filter((row) => row.level.uid === level.uid)
 
 describe('GET /findings', () => {
   it('lists the newest study of the network with its counts and the number of comparisons', async () => {
@@ -93,7 +105,10 @@ describe('GET /findings', () => {
   it('shows a finding about a studio’s own level to those who may read that studio, and to nobody else', async () => {
     const at = await readWorld()
     const everything = await list(await at.as(at.admin), at)
-    const lead = await list(await at.as(await makePerson({ network: at.network, roles: [{ role: 'education-lead' }] })), at)
+    const lead = await list(
+      await at.as(await makePerson({ network: at.network, roles: [{ role: 'education-lead' }] })),
+      at,
+    )
     const quay = await list(await at.as(at.ownerOfQuay), at)
     expect(about(everything.rows, at.own)).toHaveLength(1)
     expect(about(lead.rows, at.own)).toHaveLength(1)
@@ -111,7 +126,10 @@ describe('GET /findings', () => {
     expect(own.rows.map(({ studio }) => studio?.uid)).toEqual(own.rows.map(() => at.quay.uid))
     const foreign = await browser.get(listPath(at)).query({ scope: at.yard.uid }).expect(404)
     const missing = await browser.get(listPath(at)).query({ scope: v7() }).expect(404)
-    expect({ ...foreign.body.error, requestId: '' }).toEqual({ ...missing.body.error, requestId: '' })
+    expect({ ...foreign.body.error, requestId: '' }).toEqual({
+      ...missing.body.error,
+      requestId: '',
+    })
   })
 
   it('filters by a fault and those below it, by factor, by q and by direction', async () => {
@@ -128,7 +146,8 @@ describe('GET /findings', () => {
     expect(raised.total + lowered.total).toBe(all)
     expect(raised.rows.every(({ ratio }) => ratio === null || ratio > 1)).toBe(true)
     expect(lowered.rows.every(({ ratio }) => ratio !== null && ratio <= 1)).toBe(true)
-    for (const { qValue } of (await list(browser, at, { q: '0.001' })).rows) expect(qValue).toBeLessThanOrEqual(0.001)
+    for (const { qValue } of (await list(browser, at, { q: '0.001' })).rows)
+      expect(qValue).toBeLessThanOrEqual(0.001)
   })
 
   it('gives a page at a time, surest first', async () => {
@@ -144,7 +163,12 @@ describe('GET /findings', () => {
 
   it('names the field of a filter that cannot be', async () => {
     const at = await readWorld()
-    const { body } = await (await at.as(at.admin)).get(listPath(at)).query({ q: '2', direction: 'up' }).expect(422)
+    const { body } = await (
+      await at.as(at.admin)
+    )
+      .get(listPath(at))
+      .query({ q: '2', direction: 'up' })
+      .expect(422)
     expect(Object.keys(body.error.fields)).toEqual(['q', 'direction'])
   })
 
@@ -152,7 +176,11 @@ describe('GET /findings', () => {
     const network = await makeNetwork()
     const { app } = await createTestApp()
     const admin = await makePerson({ network, roles: [{ role: 'network-admin' }] })
-    const { body } = await (await signedIn(app, admin)).get(fill(PATHS.findings, { network: network.slug })).expect(200)
+    const { body } = await (
+      await signedIn(app, admin)
+    )
+      .get(fill(PATHS.findings, { network: network.slug }))
+      .expect(200)
     expect(body).toMatchObject({ study: null, rows: [], total: 0 })
   })
 })
@@ -162,7 +190,9 @@ describe('GET /findings/:finding', () => {
     const at = await readWorld()
     const browser = await at.as(at.ownerOfQuay)
     const [finding] = about((await list(browser, at)).rows, at.porcelain)
-    const detail = findingOutput.parse((await browser.get(onePath(at, finding?.uid ?? '')).expect(200)).body)
+    const detail = findingOutput.parse(
+      (await browser.get(onePath(at, finding?.uid ?? '')).expect(200)).body,
+    )
     expect(detail.study.comparisons).toBeGreaterThan(0)
     expect(detail.levels[0]).toMatchObject({
       level: { uid: at.porcelain.uid, name: 'Porcelain' },
@@ -195,7 +225,9 @@ describe('GET /findings/:finding', () => {
     const browser = await at.as(at.admin)
     const [finding] = about((await list(browser, at)).rows, at.porcelain)
     const { body } = await browser.get(onePath(at, finding?.uid ?? ''))
-    expect(body.levels.map(({ level }: { level: { name: string } }) => level.name)).toContain('Yard blend')
+    expect(body.levels.map(({ level }: { level: { name: string } }) => level.name)).toContain(
+      'Yard blend',
+    )
   })
 
   it('goes by the present name of a level', async () => {
@@ -213,7 +245,9 @@ describe('GET /findings/:finding', () => {
     const [ofOwnLevel] = about((await list(everything, at)).rows, at.own)
     const [ofYard] = (await list(everything, at, { scope: at.yard.uid })).rows
     const quay = await at.as(at.ownerOfQuay)
-    const stranger = await at.as(await makePerson({ network: await makeNetwork(), roles: [{ role: 'network-admin' }] }))
+    const stranger = await at.as(
+      await makePerson({ network: await makeNetwork(), roles: [{ role: 'network-admin' }] }),
+    )
     const answers = [
       await quay.get(onePath(at, ofOwnLevel?.uid ?? '')),
       await quay.get(onePath(at, ofYard?.uid ?? '')),
@@ -243,12 +277,16 @@ describe('GET /findings.csv', () => {
     const path = fill(PATHS.findingsCsv, { network: at.network.slug })
     const { text, headers } = await browser.get(path).query({ fault: 's-crack' }).expect(200)
     expect(headers['content-type']).toMatch(/^text\/csv/)
-    expect(headers['content-disposition']).toBe(`attachment; filename=findings-${at.network.slug}-2026-03-10.csv`)
+    expect(headers['content-disposition']).toBe(
+      `attachment; filename=findings-${at.network.slug}-2026-03-10.csv`,
+    )
     const rows = parse(text, { columns: true, bom: true }) as unknown as Record<string, string>[]
     const { rows: listed } = await list(browser, at, { fault: 's-crack' })
     expect(rows).toHaveLength(listed.length)
     const row = rows.find(({ level }) => level === 'Porcelain')
-    expect(row?.finding).toBe('S-cracks show 12 times as often on ware of porcelain, compared with other ware in the same firings.')
+    expect(row?.finding).toBe(
+      'S-cracks show 12 times as often on ware of porcelain, compared with other ware in the same firings.',
+    )
     expect(Number(row?.ratio)).toBeCloseTo(12, 10)
     expect(row?.['pieces, with the level']).toBe('400')
     await browser.get(path).query({ scope: at.yard.uid }).expect(404)

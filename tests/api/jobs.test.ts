@@ -22,9 +22,21 @@ describe('GET /jobs', () => {
     const { browser, path } = await setUp()
     const { body } = await browser.get(path).expect(200)
     const { jobs, runs } = jobsOutput.parse(body)
-    expect(jobs.map(({ job, schedule, nextAt, last }) => ({ job, schedule, nextAt, last }))).toEqual([
-      { job: 'study', schedule: 'every night at 02:15, America/New_York time', nextAt: '2026-03-11T06:15:00.000Z', last: null },
-      { job: 'roll-up', schedule: 'every Sunday at 03:00, America/New_York time', nextAt: '2026-03-15T07:00:00.000Z', last: null },
+    expect(
+      jobs.map(({ job, schedule, nextAt, last }) => ({ job, schedule, nextAt, last })),
+    ).toEqual([
+      {
+        job: 'study',
+        schedule: 'every night at 02:15, America/New_York time',
+        nextAt: '2026-03-11T06:15:00.000Z',
+        last: null,
+      },
+      {
+        job: 'roll-up',
+        schedule: 'every Sunday at 03:00, America/New_York time',
+        nextAt: '2026-03-15T07:00:00.000Z',
+        last: null,
+      },
     ])
     expect(runs).toEqual([])
   })
@@ -41,7 +53,13 @@ describe('POST /jobs/:job/runs', () => {
   it('makes a waiting run with the name of who asked, and answers the same one to a second press', async () => {
     const { browser, run, path, admin, network } = await setUp()
     const first = await browser.post(run('study')).expect(202)
-    expect(first.body.run).toMatchObject({ job: 'study', status: 'waiting', progress: 0, requestedBy: admin.name, slot: 'now:2026-03-10T12:00:00.000Z' })
+    expect(first.body.run).toMatchObject({
+      job: 'study',
+      status: 'waiting',
+      progress: 0,
+      requestedBy: admin.name,
+      slot: 'now:2026-03-10T12:00:00.000Z',
+    })
     const second = await browser.post(run('study')).expect(202)
     expect(second.body.run).toEqual(first.body.run)
     expect(await JobSlot.count({ where: { networkId: network.id } })).toBe(1)
@@ -57,7 +75,9 @@ describe('POST /jobs/:job/runs', () => {
     await createScheduler(deps).drain()
     const { body } = await browser.get(path)
     expect(body.runs[0]).toMatchObject({ status: 'done', progress: 100, error: null })
-    expect(body.runs[0].outcome).toBe('20 firings, 40 lots, 1 comparison: 1 finding; 1 more in 1 studio studied alone.')
+    expect(body.runs[0].outcome).toBe(
+      '20 firings, 40 lots, 1 comparison: 1 finding; 1 more in 1 studio studied alone.',
+    )
     const findings = await browser.get(fill(PATHS.findings, { network: network.slug })).expect(200)
     expect(findings.body.total).toBe(1)
   })
@@ -84,7 +104,10 @@ describe('POST /jobs/:job/runs', () => {
 
   it('answers 404 to strangers of another network and 401 to nobody', async () => {
     const { app, run, path, network } = await setUp()
-    const stranger = await signedIn(app, await makePerson({ network: await makeNetwork(), roles: [{ role: 'network-admin' }] }))
+    const stranger = await signedIn(
+      app,
+      await makePerson({ network: await makeNetwork(), roles: [{ role: 'network-admin' }] }),
+    )
     await stranger.get(path).expect(404)
     await stranger.post(run('study')).expect(404)
     await visitor(app).get(path).expect(401)

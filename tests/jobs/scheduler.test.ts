@@ -14,7 +14,11 @@ import { makeNetwork, makePerson, makeScope } from '../support/factories.js'
 /** A clock that tests move. */
 function movableClock(at: string) {
   let now = Date.parse(at)
-  return { now: () => new Date(now), set: (to: string) => (now = Date.parse(to)), pass: (ms: number) => (now += ms) }
+  return {
+    now: () => new Date(now),
+    set: (to: string) => (now = Date.parse(to)),
+    pass: (ms: number) => (now += ms),
+  }
 }
 
 const EVENING = '2026-03-09T20:00:00Z'
@@ -24,7 +28,9 @@ const NIGHT = '2026-03-10T02:15:30Z'
 async function madeAt(at: string, ids: readonly number[] | 'all'): Promise<void> {
   const { sequelize } = await testDeps()
   const where = ids === 'all' ? '' : 'WHERE id IN (:ids)'
-  await sequelize.query(`UPDATE networks SET created_at = :at ${where}`, { replacements: { at: new Date(at), ids } })
+  await sequelize.query(`UPDATE networks SET created_at = :at ${where}`, {
+    replacements: { at: new Date(at), ids },
+  })
 }
 
 /** Schedulers look over all networks: those that other tests of this schema left are made to owe nothing. */
@@ -41,7 +47,8 @@ async function setUp(at = EVENING) {
   return { clock, network, deps, scope: await makeScope(network) }
 }
 
-const slotsOf = (networkId: number, job = 'study') => JobSlot.findAll({ where: { networkId, job }, order: ['id'] })
+const slotsOf = (networkId: number, job = 'study') =>
+  JobSlot.findAll({ where: { networkId, job }, order: ['id'] })
 
 /** A runner that notes each run and does what it is told. */
 function noting(work: (context: JobContext) => Promise<string> = async () => 'Done.') {
@@ -50,7 +57,10 @@ function noting(work: (context: JobContext) => Promise<string> = async () => 'Do
     runs.push(context.networkId)
     return work(context)
   }
-  return { runs, runners: { study: runner, 'roll-up': async () => 'Right.', tidy: async () => 'Clean.' } }
+  return {
+    runs,
+    runners: { study: runner, 'roll-up': async () => 'Right.', tidy: async () => 'Clean.' },
+  }
 }
 
 describe('the scheduler', () => {
@@ -64,18 +74,31 @@ describe('the scheduler', () => {
     expect(runs).toEqual([network.id])
     const [slot, ...more] = await slotsOf(network.id)
     expect(more).toEqual([])
-    expect(slot).toMatchObject({ slot: '2026-03-10', status: 'done', outcome: 'Done.', attempt: 1, progress: 100, owner: null })
+    expect(slot).toMatchObject({
+      slot: '2026-03-10',
+      status: 'done',
+      outcome: 'Done.',
+      attempt: 1,
+      progress: 100,
+      owner: null,
+    })
     expect(slot?.finishedAt).toEqual(new Date(NIGHT))
   })
 
   it('runs each of many waiting runs once when two servers race for them', async () => {
     const { clock, deps, network } = await setUp()
-    const networks = [network, ...(await Promise.all(Array.from({ length: 7 }, () => makeNetwork())))]
+    const networks = [
+      network,
+      ...(await Promise.all(Array.from({ length: 7 }, () => makeNetwork()))),
+    ]
     const ids = networks.map(({ id }) => id)
     await madeAt(EVENING, ids)
     clock.set(NIGHT)
     const { runs, runners } = noting()
-    await Promise.all([createScheduler(deps, runners).tick(), createScheduler(deps, runners).tick()])
+    await Promise.all([
+      createScheduler(deps, runners).tick(),
+      createScheduler(deps, runners).tick(),
+    ])
     expect([...runs].sort((a, b) => a - b)).toEqual([...ids].sort((a, b) => a - b))
   })
 
@@ -87,7 +110,10 @@ describe('the scheduler', () => {
     clock.set('2026-03-17T09:00:00Z')
     await createScheduler(deps, runners).tick()
     expect(runs).toHaveLength(2)
-    expect((await slotsOf(network.id)).map(({ slot }) => slot)).toEqual(['2026-03-10', '2026-03-17'])
+    expect((await slotsOf(network.id)).map(({ slot }) => slot)).toEqual([
+      '2026-03-10',
+      '2026-03-17',
+    ])
   })
 
   it('stores progress while it runs', async () => {
@@ -113,7 +139,11 @@ describe('the scheduler', () => {
     await server.tick()
     await server.tick()
     expect(runs).toHaveLength(1)
-    expect((await slotsOf(network.id))[0]).toMatchObject({ status: 'waiting', attempt: 1, error: 'the disk is full (1)' })
+    expect((await slotsOf(network.id))[0]).toMatchObject({
+      status: 'waiting',
+      attempt: 1,
+      error: 'the disk is full (1)',
+    })
     clock.pass(61_000)
     await server.tick()
     clock.pass(301_000)
@@ -121,7 +151,11 @@ describe('the scheduler', () => {
     clock.pass(3_600_000)
     await server.tick()
     expect(runs).toHaveLength(MOST_TRIES)
-    expect((await slotsOf(network.id))[0]).toMatchObject({ status: 'failed', attempt: MOST_TRIES, error: 'the disk is full (3)' })
+    expect((await slotsOf(network.id))[0]).toMatchObject({
+      status: 'failed',
+      attempt: MOST_TRIES,
+      error: 'the disk is full (3)',
+    })
   })
 
   it('forgets the error of a run that succeeds at its second try', async () => {
@@ -135,7 +169,12 @@ describe('the scheduler', () => {
     await server.tick()
     clock.pass(61_000)
     await server.tick()
-    expect((await slotsOf(network.id))[0]).toMatchObject({ status: 'done', attempt: 2, error: null, outcome: 'Done.' })
+    expect((await slotsOf(network.id))[0]).toMatchObject({
+      status: 'done',
+      attempt: 2,
+      error: null,
+      outcome: 'Done.',
+    })
   })
 
   it('takes the run of a killed process over once its lease has run out, not before', async () => {
@@ -172,7 +211,11 @@ describe('the scheduler', () => {
       return 'By the first.'
     })
     await createScheduler(deps, runners).tick()
-    expect((await slotsOf(network.id))[0]).toMatchObject({ status: 'done', outcome: 'By the other.', attempt: 2 })
+    expect((await slotsOf(network.id))[0]).toMatchObject({
+      status: 'done',
+      outcome: 'By the other.',
+      attempt: 2,
+    })
   })
 
   it('gives up a run whose holders died at every try', async () => {
@@ -183,7 +226,10 @@ describe('the scheduler', () => {
       clock.pass(LEASE_MS + 1000)
     }
     expect(await claimNext(ownerName(), deps)).toBeNull()
-    expect((await slotsOf(network.id))[0]).toMatchObject({ status: 'failed', error: 'The server stopped during each of 3 tries.' })
+    expect((await slotsOf(network.id))[0]).toMatchObject({
+      status: 'failed',
+      error: 'The server stopped during each of 3 tries.',
+    })
   })
 
   it('gives a run back when the server stops, for another to begin afresh', async () => {
@@ -197,7 +243,12 @@ describe('the scheduler', () => {
     })
     server = createScheduler(deps, runners)
     await server.tick()
-    expect((await slotsOf(network.id))[0]).toMatchObject({ status: 'waiting', attempt: 0, owner: null, error: null })
+    expect((await slotsOf(network.id))[0]).toMatchObject({
+      status: 'waiting',
+      attempt: 0,
+      owner: null,
+      error: null,
+    })
     await createScheduler(deps, noting().runners).tick()
     expect((await slotsOf(network.id))[0]).toMatchObject({ status: 'done', attempt: 1 })
   })
@@ -219,14 +270,26 @@ describe('startScheduler', () => {
     await requestRun(scope, 'study', deps)
     const scheduler = startScheduler(deps)
     const ended = (runs: number) =>
-      vi.waitFor(async () => expect((await slotsOf(network.id)).map(({ status }) => status)).toEqual(Array(runs).fill('done')), { timeout: 20_000 })
+      vi.waitFor(
+        async () =>
+          expect((await slotsOf(network.id)).map(({ status }) => status)).toEqual(
+            Array(runs).fill('done'),
+          ),
+        { timeout: 20_000 },
+      )
     await ended(1)
     await requestRun(scope, 'study', deps)
     await ended(2)
     await scheduler.stop()
-    expect((await slotsOf(network.id))[1]?.outcome).toBe('0 firings, 0 lots, 0 comparisons: 0 findings.')
+    expect((await slotsOf(network.id))[1]?.outcome).toBe(
+      '0 firings, 0 lots, 0 comparisons: 0 findings.',
+    )
     await requestRun(scope, 'study', deps)
-    expect((await slotsOf(network.id)).map(({ status }) => status)).toEqual(['done', 'done', 'waiting'])
+    expect((await slotsOf(network.id)).map(({ status }) => status)).toEqual([
+      'done',
+      'done',
+      'waiting',
+    ])
   })
 })
 
@@ -235,7 +298,9 @@ describe('requestRun', () => {
     const { deps, network, scope } = await setUp()
     let told = 0
     const forget = whenRunRequested(deps, () => (told += 1))
-    const asked = await Promise.all(Array.from({ length: 8 }, () => requestRun(scope, 'study', deps)))
+    const asked = await Promise.all(
+      Array.from({ length: 8 }, () => requestRun(scope, 'study', deps)),
+    )
     forget()
     await requestRun(scope, 'study', deps)
     expect(told).toBe(8)

@@ -11,7 +11,12 @@ const NOW = '2026-09-01T03:30:00Z'
 
 async function runTidy(): Promise<string> {
   const deps = await testDeps({ clock: fixedClock(NOW) })
-  return tidy({ networkId: 0, deps, signal: new AbortController().signal, progress: async () => undefined })
+  return tidy({
+    networkId: 0,
+    deps,
+    signal: new AbortController().signal,
+    progress: async () => undefined,
+  })
 }
 
 async function insert(sql: string, replacements: Record<string, unknown>): Promise<void> {
@@ -21,18 +26,31 @@ async function insert(sql: string, replacements: Record<string, unknown>): Promi
 
 async function columnOf(sql: string, replacements: Record<string, unknown>): Promise<unknown[]> {
   const { sequelize } = await testDeps()
-  const rows = await sequelize.query<{ value: unknown }>(sql, { type: QueryTypes.SELECT, replacements })
+  const rows = await sequelize.query<{ value: unknown }>(sql, {
+    type: QueryTypes.SELECT,
+    replacements,
+  })
   return rows.map(({ value }) => value)
 }
 
 describe('tidying', () => {
   it('removes sessions that have expired and keeps the others', async () => {
     const [old, valid] = [v7(), v7()]
-    for (const [sid, expires] of [[old, '2026-09-01 03:29:59'], [valid, '2026-09-01 03:30:01']]) {
-      await insert("INSERT INTO sessions (sid, expires, data, created_at, updated_at) VALUES (:sid, :expires, '{}', NOW(), NOW())", { sid, expires })
+    for (const [sid, expires] of [
+      [old, '2026-09-01 03:29:59'],
+      [valid, '2026-09-01 03:30:01'],
+    ]) {
+      await insert(
+        "INSERT INTO sessions (sid, expires, data, created_at, updated_at) VALUES (:sid, :expires, '{}', NOW(), NOW())",
+        { sid, expires },
+      )
     }
     await runTidy()
-    expect(await columnOf('SELECT sid AS value FROM sessions WHERE sid IN (:both)', { both: [old, valid] })).toEqual([valid])
+    expect(
+      await columnOf('SELECT sid AS value FROM sessions WHERE sid IN (:both)', {
+        both: [old, valid],
+      }),
+    ).toEqual([valid])
   })
 
   it('removes links a month after they expired', async () => {
@@ -53,10 +71,17 @@ describe('tidying', () => {
     const subjects = [`account:${v7()}`, `account:${v7()}`]
     const at = ['2026-09-01 02:00:00', '2026-09-01 03:20:00']
     for (const [i, subject] of subjects.entries()) {
-      await insert('INSERT INTO sign_in_attempts (subject, failures, window_started_at) VALUES (:subject, 3, :at)', { subject, at: at[i] })
+      await insert(
+        'INSERT INTO sign_in_attempts (subject, failures, window_started_at) VALUES (:subject, 3, :at)',
+        { subject, at: at[i] },
+      )
     }
     await runTidy()
-    expect(await columnOf('SELECT subject AS value FROM sign_in_attempts WHERE subject IN (:subjects)', { subjects })).toEqual([subjects[1]])
+    expect(
+      await columnOf('SELECT subject AS value FROM sign_in_attempts WHERE subject IN (:subjects)', {
+        subjects,
+      }),
+    ).toEqual([subjects[1]])
   })
 
   it('removes old records of runs, but neither open ones nor the last scheduled one', async () => {
@@ -67,10 +92,19 @@ describe('tidying', () => {
       { ...old, slot: '2026-01-10', status: 'done' },
       { ...old, slot: 'now:2026-01-10T12:00:00.000Z', status: 'failed' },
       { ...old, slot: 'now:2026-01-11T12:00:00.000Z', status: 'waiting', finishedAt: null },
-      { ...old, slot: 'now:2026-08-11T12:00:00.000Z', status: 'done', finishedAt: new Date('2026-08-11T12:00:00Z') },
+      {
+        ...old,
+        slot: 'now:2026-08-11T12:00:00.000Z',
+        status: 'done',
+        finishedAt: new Date('2026-08-11T12:00:00Z'),
+      },
     ])
     expect(await runTidy()).toMatch(/2 records of runs\.$/)
     const left = await JobSlot.findAll({ where: { networkId }, order: ['id'] })
-    expect(left.map(({ slot }) => slot)).toEqual(['2026-01-10', 'now:2026-01-11T12:00:00.000Z', 'now:2026-08-11T12:00:00.000Z'])
+    expect(left.map(({ slot }) => slot)).toEqual([
+      '2026-01-10',
+      'now:2026-01-11T12:00:00.000Z',
+      'now:2026-08-11T12:00:00.000Z',
+    ])
   })
 })

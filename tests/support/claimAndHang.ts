@@ -10,6 +10,11 @@ import { claimNext, ownerName } from '../../server/scheduling/slots.js'
 
 const sequelize = createDatabase(process.env.DATABASE_URL ?? '')
 const clock = fixedClock(process.env.NOW ?? '')
-const held = await claimNext(ownerName(), { sequelize, clock, logger: silentLogger, config: {} as Config })
+const held = await claimNext(ownerName(), {
+  sequelize,
+  clock,
+  logger: silentLogger,
+  config: {} as Config,
+})
 process.stdout.write(`${JSON.stringify(held)}\n`)
 setInterval(() => undefined, 1000)

@@ -32,7 +32,13 @@ export interface PlantOver {
  * Bisque firings of one kiln, each of a lot of 20 pieces of either clay body: 6 S-cracks on the risky
  * one, 1 on the safe one in every other firing. Written in bulk.
  */
-export async function plantFirings({ studio, firings = 20, lastDay, also = {}, ...over }: PlantOver): Promise<Planted> {
+export async function plantFirings({
+  studio,
+  firings = 20,
+  lastDay,
+  also = {},
+  ...over
+}: PlantOver): Promise<Planted> {
   const network = await networkOf(studio)
   const kiln = await makeKiln({ studio })
   const risky = over.risky ?? (await makeLevel({ network, name: 'Porcelain' }))
@@ -48,8 +54,16 @@ export async function plantFirings({ studio, firings = 20, lastDay, also = {}, .
       kind: 'bisque',
       localDate: addDays(lastDay, -i),
       lots: [
-        { pieces: 20, levels: { clay_body: risky, ...also }, losses: [{ fault: 's-crack', pieces: 6 }] },
-        { pieces: 20, levels: { clay_body: safe, ...also }, losses: i % 2 === 0 ? [{ fault: 's-crack', pieces: 1 }] : [] },
+        {
+          pieces: 20,
+          levels: { clay_body: risky, ...also },
+          losses: [{ fault: 's-crack', pieces: 6 }],
+        },
+        {
+          pieces: 20,
+          levels: { clay_body: safe, ...also },
+          losses: i % 2 === 0 ? [{ fault: 's-crack', pieces: 1 }] : [],
+        },
       ],
     })
     const at = new Date(`${addDays(lastDay, -i)}T12:00:00Z`)
@@ -57,13 +71,23 @@ export async function plantFirings({ studio, firings = 20, lastDay, also = {}, .
       { kind: 'pack', base: 0, deviceTime: null, pack },
       { kind: 'report', base: 1, deviceTime: null, report },
     ]
-    return { uid: v7(), revisions: inputs.map((input) => ({ uid: v7(), authorId: null, at, input: revisionInput.parse(input) })) }
+    return {
+      uid: v7(),
+      revisions: inputs.map((input) => ({
+        uid: v7(),
+        authorId: null,
+        at,
+        input: revisionInput.parse(input),
+      })),
+    }
   })
   const keys = {
     kilns: new Map(kilns.map(({ uid, id, studioId }) => [uid, { id, studioId }])),
     levels: new Map(levels.map(({ uid, id }) => [uid, id])),
   }
   const scope = await makeScope(network)
-  await deps.sequelize.transaction((transaction) => writeFirings(scope, whole, keys, { ...deps, transaction }))
+  await deps.sequelize.transaction((transaction) =>
+    writeFirings(scope, whole, keys, { ...deps, transaction }),
+  )
   return { kiln, risky, safe }
 }

@@ -60,17 +60,33 @@ describe('findingText', () => {
 
   it('names both sides of a glaze and clay body pair', () => {
     const pair = { factor: 'clay_body', level: { name: 'White stoneware' } }
-    expect(findingText({ ...finding, fault: 'crazing', factor: 'glaze', level: { name: 'Celadon' }, pair, ratio: 5.1 })).toBe(
+    expect(
+      findingText({
+        ...finding,
+        fault: 'crazing',
+        factor: 'glaze',
+        level: { name: 'Celadon' },
+        pair,
+        ratio: 5.1,
+      }),
+    ).toBe(
       'Crazing shows 5.1 times as often on ware of white stoneware glazed with celadon, compared with other ware in the same firings.',
     )
   })
 
   it('compares a kiln with other firings of the same studio and kind', () => {
-    const kiln = { ...finding, factor: 'kiln', level: { name: 'North' }, comparison: 'between-firings' as const }
+    const kiln = {
+      ...finding,
+      factor: 'kiln',
+      level: { name: 'North' },
+      comparison: 'between-firings' as const,
+    }
     expect(findingText(kiln)).toBe(
       'S-cracks show 2.2 times as often in kiln North, compared with other firings of the same studio and kind.',
     )
-    expect(findingText({ ...kiln, ratio: null })).toMatch(/only in kiln North, never on ware of other firings of/)
+    expect(findingText({ ...kiln, ratio: null })).toMatch(
+      /only in kiln North, never on ware of other firings of/,
+    )
   })
 
   it('speaks of every fault in words of its own and never of causes', () => {
@@ -83,7 +99,8 @@ describe('findingText', () => {
   it('matches the verb to its subject', () => {
     for (const { id } of FAULT_TREE) {
       const { subject, present } = faultWords(id)
-      const isMass = /^(Crazing|Late crazing|Crawling|Too thick a glaze|Underfired or dry glaze)$/.test(subject)
+      const isMass =
+        /^(Crazing|Late crazing|Crawling|Too thick a glaze|Underfired or dry glaze)$/.test(subject)
       expect(`${subject} ${present}`).toMatch(isMass ? / shows$/ : / (show|crack|come off)$/)
     }
   })
@@ -109,7 +126,9 @@ describe('levelPhrase', () => {
   })
 
   it('reads on where the name of a practice does, and quotes it where not', () => {
-    expect(levelPhrase('drying_practice', 'Under loose plastic')).toBe('on ware dried under loose plastic')
+    expect(levelPhrase('drying_practice', 'Under loose plastic')).toBe(
+      'on ware dried under loose plastic',
+    )
     expect(levelPhrase('drying_practice', 'slowly, covered')).toBe('on ware dried slowly, covered')
     expect(levelPhrase('drying_practice', 'Open shelf')).toBe('on ware dried “open shelf”')
     expect(levelPhrase('joining_practice', 'Slip only')).toBe('on ware joined “slip only”')
@@ -142,7 +161,11 @@ describe('counts and sureness', () => {
     expect(plainText(findingCounts(finding))).toBe(
       'In the 41 firings that held both: 78 of 912 pieces against 91 of 2,338.',
     )
-    expect(findingCounts(finding).filter(({ strong }) => strong).map(({ text }) => text)).toEqual(['78 of 912', '91 of 2,338'])
+    expect(
+      findingCounts(finding)
+        .filter(({ strong }) => strong)
+        .map(({ text }) => text),
+    ).toEqual(['78 of 912', '91 of 2,338'])
   })
 
   it('says that a comparison between firings is the weaker one', () => {
@@ -153,14 +176,20 @@ describe('counts and sureness', () => {
 
   it('speaks of one firing and one piece in the singular', () => {
     const one = { ...finding, mixedStrata: 1, exposed: { events: 1, units: 1 } }
-    expect(plainText(findingCounts(one))).toBe('In the 1 firing that held both: 1 of 1 piece against 91 of 2,338.')
+    expect(plainText(findingCounts(one))).toBe(
+      'In the 1 firing that held both: 1 of 1 piece against 91 of 2,338.',
+    )
   })
 
   it('gives the ratio with its interval and q', () => {
     expect(ratioLine(finding)).toBe('2.2 (1.5 to 3.1), q 0.003')
-    expect(ratioLine({ ...finding, lower: null, upper: null, qValue: 0.00001 })).toBe('2.2, q under 0.001')
+    expect(ratioLine({ ...finding, lower: null, upper: null, qValue: 0.00001 })).toBe(
+      '2.2, q under 0.001',
+    )
     expect(ratioLine({ ...finding, ratio: 0, lower: null, upper: null })).toBe('0, q 0.003')
-    expect(ratioLine({ ...finding, ratio: null, lower: null, upper: null, qValue: 0.04 })).toBe('no ratio, q 0.04')
+    expect(ratioLine({ ...finding, ratio: null, lower: null, upper: null, qValue: 0.04 })).toBe(
+      'no ratio, q 0.04',
+    )
   })
 
   it.each([
@@ -183,8 +212,8 @@ describe('counts and sureness', () => {
 
   it('names the other side of the comparison', () => {
     expect(otherSide({ factor: 'drying_practice', pair: null })).toBe('every other drying practice')
-    expect(otherSide({ factor: 'glaze', pair: { factor: 'clay_body', level: { name: 'white' } } })).toBe(
-      'every other pair of glaze and clay body',
-    )
+    expect(
+      otherSide({ factor: 'glaze', pair: { factor: 'clay_body', level: { name: 'white' } } }),
+    ).toBe('every other pair of glaze and clay body')
   })
 })

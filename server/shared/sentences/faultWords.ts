@@ -10,9 +10,24 @@ export interface FaultWords {
   base: string
 }
 
-const many = (subject: string): FaultWords => ({ subject, present: 'show', past: 'showed', base: 'show' })
-const mass = (subject: string): FaultWords => ({ subject, present: 'shows', past: 'showed', base: 'show' })
-const cracking = (subject: string): FaultWords => ({ subject, present: 'crack', past: 'cracked', base: 'crack' })
+const many = (subject: string): FaultWords => ({
+  subject,
+  present: 'show',
+  past: 'showed',
+  base: 'show',
+})
+const mass = (subject: string): FaultWords => ({
+  subject,
+  present: 'shows',
+  past: 'showed',
+  base: 'show',
+})
+const cracking = (subject: string): FaultWords => ({
+  subject,
+  present: 'crack',
+  past: 'cracked',
+  base: 'crack',
+})
 
 const WORDS: Readonly<Record<string, FaultWords>> = {
   'crack-not-named': many('Cracks and breaks'),
@@ -27,7 +42,12 @@ const WORDS: Readonly<Record<string, FaultWords>> = {
   'joint-crack': cracking('Joints and seams'),
   'attached-part-joint-crack': cracking('Handles and spouts'),
   'seam-crack': cracking('Seams'),
-  'lug-sprig-detach': { subject: 'Lugs, sprigs and small parts', present: 'come off', past: 'came off', base: 'come off' },
+  'lug-sprig-detach': {
+    subject: 'Lugs, sprigs and small parts',
+    present: 'come off',
+    past: 'came off',
+    base: 'come off',
+  },
   'drying-crack': many('Making and drying cracks'),
   'slab-hinge-crack': many('Cracks along slab folds'),
   'lamination-split': many('Lamination splits'),

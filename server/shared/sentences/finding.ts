@@ -61,7 +61,9 @@ function where({ factor, level, pair }: FindingInWords): string {
 /** Compared inside firings, or between firings. */
 function againstWhat({ comparison, factor }: FindingInWords): string {
   if (comparison === 'within-firing') return 'other ware in the same firings'
-  return factorOf(factor)?.of === 'firing' ? 'other firings of the same studio and kind' : 'other ware of the same studio and kind of firing'
+  return factorOf(factor)?.of === 'firing'
+    ? 'other firings of the same studio and kind'
+    : 'other ware of the same studio and kind of firing'
 }
 
 /**
@@ -116,14 +118,20 @@ export function findingCounts(finding: FindingInWords): Stretch[] {
     { text: counted(unexposed), strong: true },
   ]
   if (finding.comparison === 'within-firing') {
-    const firings = mixedStrata === 1 ? 'In the 1 firing that held both: ' : `In the ${formatCount(mixedStrata)} firings that held both: `
+    const firings =
+      mixedStrata === 1
+        ? 'In the 1 firing that held both: '
+        : `In the ${formatCount(mixedStrata)} firings that held both: `
     return [{ text: firings }, ...figures, { text: '.' }]
   }
   return [...figures, { text: `. ${betweenNote(finding)}` }]
 }
 
 /** Why a comparison between firings says less; empty for one inside firings. */
-export function betweenNote({ comparison, informativeStrata }: Pick<FindingInWords, 'comparison' | 'informativeStrata'>): string {
+export function betweenNote({
+  comparison,
+  informativeStrata,
+}: Pick<FindingInWords, 'comparison' | 'informativeStrata'>): string {
   if (comparison === 'within-firing') return ''
   return `Compared between firings: weaker, for ${plural(informativeStrata, 'firing')} may differ in more than this.`
 }
@@ -135,9 +143,15 @@ export function otherSide({ factor, pair }: Pick<FindingInWords, 'factor' | 'pai
 }
 
 /** "2.2 (1.5 to 3.1), q 0.003": the figure with its 95 % interval. */
-export function ratioLine({ ratio, lower, upper, qValue }: Pick<FindingInWords, 'ratio' | 'lower' | 'upper' | 'qValue'>): string {
+export function ratioLine({
+  ratio,
+  lower,
+  upper,
+  qValue,
+}: Pick<FindingInWords, 'ratio' | 'lower' | 'upper' | 'qValue'>): string {
   const figure = ratio === null ? 'no ratio' : ratioFigure(ratio)
-  const interval = lower === null || upper === null ? '' : ` (${ratioFigure(lower)} to ${ratioFigure(upper)})`
+  const interval =
+    lower === null || upper === null ? '' : ` (${ratioFigure(lower)} to ${ratioFigure(upper)})`
   return `${figure}${interval}, q ${qFigure(qValue)}`
 }
 
@@ -161,8 +175,14 @@ function rounded(n: number): number {
 }
 
 /** "One of 214 comparisons made that night. Drying practice was not recorded for 29 % of pieces." */
-export function lookedAt(comparisons: number, { factor, recordedShare }: Pick<FindingInWords, 'factor' | 'recordedShare'>): string {
-  const made = comparisons === 1 ? 'The only comparison made that night.' : `One of ${formatCount(comparisons)} comparisons made that night.`
+export function lookedAt(
+  comparisons: number,
+  { factor, recordedShare }: Pick<FindingInWords, 'factor' | 'recordedShare'>,
+): string {
+  const made =
+    comparisons === 1
+      ? 'The only comparison made that night.'
+      : `One of ${formatCount(comparisons)} comparisons made that night.`
   return `${made} ${recordedInWords(factor, recordedShare)}`
 }
 
@@ -170,5 +190,7 @@ function recordedInWords(factor: string, share: number): string {
   const name = factorOf(factor)?.name ?? factor
   const missing = Math.round((1 - share) * 100)
   if (missing > 0) return `${name} was not recorded for ${missing} % of pieces.`
-  return share < 1 ? `${name} was recorded for nearly all pieces.` : `${name} was recorded for all pieces.`
+  return share < 1
+    ? `${name} was recorded for nearly all pieces.`
+    : `${name} was recorded for all pieces.`
 }

@@ -12,7 +12,9 @@ const READS_ON =
 
 /** A practice after its verb: bare where it reads on, else in quotation marks. */
 function done(name: string): string {
-  return READS_ON.test(name) || /ly\b/.test(name.split(' ')[0] ?? '') ? lowerFirst(name) : `“${lowerFirst(name)}”`
+  return READS_ON.test(name) || /ly\b/.test(name.split(' ')[0] ?? '')
+    ? lowerFirst(name)
+    : `“${lowerFirst(name)}”`
 }
 
 function named(kind: string, name: string): string {
@@ -42,7 +44,9 @@ const PHRASES: Readonly<Record<string, (level: string) => string>> = {
   clay_condition: (level) => `on ware of ${lowerFirst(level)} clay`,
   glaze: (level) => `on ware glazed with ${lowerFirst(level)}`,
   glaze_sides: (level) => GLAZED[level] ?? `on ware glazed ${lowerFirst(level)}`,
-  forming: (level) => FORMED[level] ?? (/\s/.test(level) ? `on ware formed ${done(level)}` : `on ${lowerFirst(level)} ware`),
+  forming: (level) =>
+    FORMED[level] ??
+    (/\s/.test(level) ? `on ware formed ${done(level)}` : `on ${lowerFirst(level)} ware`),
   drying_practice: (level) => `on ware dried ${done(level)}`,
   joining_practice: (level) => `on ware joined ${done(level)}`,
   glazing_practice: (level) => `on ware glazed ${done(level)}`,
@@ -50,13 +54,15 @@ const PHRASES: Readonly<Record<string, (level: string) => string>> = {
   size_band: (level) => `on ware ${lowerFirst(level)} in size`,
   rack: (level) => `on ware dried at “${level}”`,
   days_dried: (level) => `on ware dried for ${lowerFirst(level)}`,
-  shelf: (level) => `on the ${named('shelf', lowerFirst(level)).replace(/^shelf (.*)$/, '$1 shelf')}`,
+  shelf: (level) =>
+    `on the ${named('shelf', lowerFirst(level)).replace(/^shelf (.*)$/, '$1 shelf')}`,
   class: (level) => `on ware from ${named('class', `“${level}”`)}`,
   class_level: (level) => `on ware of the class level “${lowerFirst(level)}”`,
   kiln: (level) => `in ${named('kiln', level)}`,
   programme: (level) => `in firings on ${named('programme', level)}`,
   cooling: (level) => COOLED[level] ?? `in firings cooled ${done(level)}`,
-  opening_temperature: (level) => `in firings opened ${/^(under|over|above|below)\b/.test(level) ? level : `at ${level}`}`,
+  opening_temperature: (level) =>
+    `in firings opened ${/^(under|over|above|below)\b/.test(level) ? level : `at ${level}`}`,
 }
 
 /** Where a fault shows: the level of a factor as a phrase that follows "show 2.2 times as often". */
