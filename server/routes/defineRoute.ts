@@ -64,6 +64,8 @@ export interface Route {
   csrf: 'same-origin' | 'token-in-url'
   /** The path names a network: middleware/tenant.ts runs before it. */
   tenant: boolean
+  /** What it takes, for whoever describes or tries all routes. */
+  input: { params?: z.ZodType; query?: z.ZodType; body?: z.ZodType }
   handler: (deps: Deps) => RequestHandler
 }
 
@@ -133,6 +135,7 @@ export function defineRoute<
     ability: spec.ability,
     csrf: spec.csrf ?? 'same-origin',
     tenant,
+    input: { params: spec.params, query: spec.query, body: spec.body },
     handler,
   }
 }
