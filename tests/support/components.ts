@@ -5,7 +5,6 @@ import { VueQueryPlugin } from '@tanstack/vue-query'
 import { createPinia, setActivePinia } from 'pinia'
 import { Quasar } from 'quasar'
 import { afterEach, beforeEach } from 'vitest'
-import type { Component } from 'vue'
 import { createMemoryHistory, createRouter } from 'vue-router'
 import type { Router } from 'vue-router'
 import { makeQueryClient } from '../../src/api/queryClient'
@@ -46,7 +45,7 @@ const Nothing = { render: () => null }
 export async function mountUi(component: unknown, options: MountOptions = {}): Promise<Mounted> {
   const router = memoryRouter()
   await router.push(options.at ?? '/kettle/today')
-  const wrapper = mount(component as Component, {
+  const wrapper = mount(component, {
     props: options.props ?? {},
     slots: (options.slots ?? {}) as never,
     attachTo: document.body,
