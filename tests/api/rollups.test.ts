@@ -1,6 +1,7 @@
 import fc from 'fast-check'
 import { v7 } from 'uuid'
 import { describe, expect, it } from 'vitest'
+import { fixedClock } from '../../server/clock.js'
 import { rebuildRollups } from '../../server/commands/rebuildRollups.js'
 import { saveRevision } from '../../server/commands/saveRevision.js'
 import { voidFiring } from '../../server/commands/voidFiring.js'
@@ -95,7 +96,7 @@ function bodiesOf(s: Step, { kilns, levels }: Setting) {
   const cooling = levels.cooling?.[s.target % 3]
   return loadBodies({
     kiln: kilns[s.kiln === 0 ? 0 : 1],
-    kind: s.kind as PackBody['kind'],
+    kind: s.kind,
     localDate: `2026-0${s.month}-15`,
     levels: cooling ? { cooling: cooling.uid } : {},
     pieces: pieces + lots.reduce((sum, lot) => sum + lot.pieces, 0),
@@ -113,7 +114,7 @@ interface Known {
 
 /** Plays a step on the firings so far; a step that is not possible for its firing is one that is. */
 async function play(s: Step, known: Known[], at: Setting): Promise<void> {
-  const deps = await testDeps()
+  const deps = await testDeps({ clock: fixedClock('2026-04-01T12:00:00Z') })
   const { pack, report } = bodiesOf(s, at)
   const firing = s.act === 'new' ? undefined : known.filter(({ state }) => state !== 'void')[s.target]
   const send = async (uid: string, base: number, input: { kind: string; pack?: PackBody; report?: ReportBody }) => {
