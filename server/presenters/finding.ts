@@ -1,5 +1,6 @@
 import type { FindingDetail, FindingView, StudyView } from '../contract/findings.js'
-import type { FindingRow, FindingWithStudy, StudyRow } from '../queries/findings.js'
+import type { FindingWithStudy } from '../queries/finding.js'
+import type { FindingRow, StudyRow } from '../queries/findings.js'
 import { faultRule } from '../shared/faults/index.js'
 import { FIRING_KINDS } from '../shared/kinds.js'
 import { cautionsFor, checksFor } from './findingFacts.js'
