@@ -60,6 +60,7 @@ const LUSTRES = ['pearl-lustre', 'gold-lustre']
 /** Draws lots for one network. */
 export class LotMaker {
   private readonly levels: ReadonlyMap<string, readonly DemoLevel[]>
+  private readonly known = new Map<string, Weights<DemoLevel>>()
 
   constructor(scenery: Scenery) {
     const byFactor = new Map<string, DemoLevel[]>()
@@ -106,9 +107,14 @@ export class LotMaker {
   }
 
   private choices(factor: string, load: Load): Weights<DemoLevel> {
-    return (this.levels.get(factor) ?? [])
-      .filter(({ studio }) => studio === null || studio === load.kiln.studio)
-      .map((level) => [level, COMMON[level.key] ?? 10] as const)
+    const key = `${factor}/${load.kiln.studio}`
+    const choices =
+      this.known.get(key) ??
+      (this.levels.get(factor) ?? [])
+        .filter(({ studio }) => studio === null || studio === load.kiln.studio)
+        .map((level) => [level, COMMON[level.key] ?? 10] as const)
+    this.known.set(key, choices)
+    return choices
   }
 
   private one(factor: string, load: Load, random: Random): DemoLevel | null {

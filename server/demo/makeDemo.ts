@@ -20,6 +20,9 @@ import { generateDemo } from './generateDemo.js'
 import type { DemoInput } from './generateDemo.js'
 import type { DemoContent, DemoNetwork } from './types.js'
 
+/** As lists of a studio are kept: after the fixed levels, among themselves by name. */
+const OWN_POSITION = 1000
+
 export interface MadeNetwork extends Written {
   slug: string
   name: string
@@ -178,10 +181,10 @@ async function writeLevels(
 ): Promise<Map<string, Level>> {
   const fixed = await Level.findAll({ where: { networkId }, transaction })
   const own = await Level.bulkCreate(
-    levels.map(({ key: _, studio, ...level }, position) => ({
+    levels.map(({ key: _, studio, ...level }) => ({
       ...level,
       networkId,
-      position,
+      position: OWN_POSITION,
       studioId: studio === null ? null : must(studios.get(studio)),
       uid: v7(),
     })),

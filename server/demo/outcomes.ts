@@ -49,7 +49,9 @@ function effectsOn(fault: string, effects: readonly PlantedEffect[]): readonly P
 
 function holds(effect: PlantedEffect, lot: TrueLot, firing: FiringRisks): boolean {
   if (effect.lastMonths !== undefined && firing.monthsAgo > effect.lastMonths) return false
-  return Object.entries(effect.when).every(([factor, level]) => {
+  const { when } = effect
+  return Object.keys(when).every((factor) => {
+    const level = when[factor] ?? ''
     if (factor === 'kiln') return firing.load.kiln.key === level
     if (factor === 'opening_temperature') return firing.hot
     const held = lot.levels[factor]

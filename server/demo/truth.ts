@@ -25,7 +25,7 @@ export const DEMO_TRUTH = {
     { fault: 'steam-blowout', when: { days_dried: 'under-3' }, ratio: 8 },
     { fault: 'cooling-dunt', when: { opening_temperature: 'hot' }, ratio: 3 },
     { fault: 'cooling-dunt', when: { kiln: 'north' }, ratio: 4.5, lastMonths: 9 },
-    { fault: 'rim-crack', when: { rack: 'otter-stair-door' }, ratio: 3 },
+    { fault: 'rim-crack', when: { rack: 'otter-stair-door' }, ratio: 3.5 },
   ] satisfies PlantedEffect[] as readonly PlantedEffect[],
   /** Without an effect of their own, and still raised in a crude count. */
   confounded: [
@@ -68,7 +68,7 @@ export const BASE_RISKS: readonly BaseRisk[] = [
   risk('s-crack', 0.02, 0.014, 0.006),
   risk('attached-part-joint-crack', 0.04, 0.02, 0.009),
   risk('seam-crack', 0.04, 0.012, 0.004),
-  risk('vertical-rim-crack', 0.02, 0.009, 0.003),
+  risk('vertical-rim-crack', 0.01, 0.011, 0.004),
   risk('base-perimeter-crack', 0.03, 0.003, 0.002),
   risk('slab-base-straight-crack', 0.04, 0.014, 0.005),
   risk('lid-gallery-crack', 0.03, 0.01, 0.004),
