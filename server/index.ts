@@ -2,6 +2,7 @@ import { createServer } from 'node:http'
 import type { Server } from 'node:http'
 import { createApp } from './app.js'
 import { systemClock } from './clock.js'
+import { passwordMatches } from './commands/passwords.js'
 import { seedAllNetworks } from './commands/seedFixedLevels.js'
 import { ConfigError, EXIT_CONFIG, readConfig } from './config.js'
 import type { Config } from './config.js'
@@ -36,6 +37,8 @@ async function prepare(deps: Deps): Promise<void> {
   const ran = await migrate(deps.sequelize)
   if (ran.length > 0) deps.logger.info({ ran }, 'migrated')
   await seedAllNetworks()
+  // Makes the hash that stands for unknown accounts, so that the first guess at one takes no longer.
+  await passwordMatches('', null, deps)
   await forgetAttempts(deps.sequelize, new Date(deps.clock.now().getTime() - ATTEMPTS_KEPT_MS))
   if (deps.config.demo && (await Network.count()) === 0) await makeDemoOnce(deps)
 }

@@ -5,7 +5,7 @@ import { linkOutput, sessionOutput, useLinkInput } from '../contract/session.js'
 import { startSession } from '../middleware/sessionLife.js'
 import { defineRoute } from './defineRoute.js'
 import type { Route } from './defineRoute.js'
-import { sessionOf } from './session.js'
+import { requireTls, sessionOf } from './session.js'
 
 const params = z.object({ token: z.string().regex(/^[\w-]{20,100}$/) })
 
@@ -27,6 +27,7 @@ export const linkRoutes: readonly Route[] = [
     body: useLinkInput,
     output: sessionOutput,
     handle: async ({ params, body, deps, req }) => {
+      requireTls(deps, req)
       const user = await redeemLink(params.token, body.password, deps)
       await startSession(req, user)
       return sessionOf(user, deps)

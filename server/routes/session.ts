@@ -20,8 +20,8 @@ export async function sessionOf(person: SignedInUser | null, deps: Deps): Promis
   return presentSession(person, networks, demo)
 }
 
-/** A cookie for TLS alone cannot be set over a connection that we take for a plain one. */
-function requireTls({ config }: Deps, req: Request): void {
+/** A cookie for TLS alone cannot be set over a connection that we take for a plain one: better to say so. */
+export function requireTls({ config }: Deps, req: Request): void {
   if (!config.baseUrl.startsWith('https:') || req.secure) return
   throw new AppError(
     'unavailable',
