@@ -187,8 +187,9 @@ export async function run(command, args, { failure, check = true, lock, ...optio
   const { code, signal, error } = await program.ended
   if (!error) await Promise.race([closed, pause(2000)])
   if (error) output += error.message
+  // Stopped because we are told to end: nobody waits for the result any more.
+  if (isEnding()) await new Promise(() => {})
   if (check && code !== 0) {
-    if (isEnding()) await new Promise(() => {})
     throw new Stop(failure ?? `${command} failed (${signal ?? `exit code ${code}`})`, gist(output))
   }
   return { code, signal, output }

@@ -2,7 +2,6 @@ import { randomBytes } from 'node:crypto'
 import { renameSync, statSync, writeSync, openSync, closeSync } from 'node:fs'
 import { join } from 'node:path'
 import { createInterface } from 'node:readline'
-import { isEnding } from './ending.mjs'
 import { writeWhole } from './lock.mjs'
 import { at, textOf } from './places.mjs'
 import { launch, node } from './programs.mjs'
@@ -70,7 +69,6 @@ export function serverEnv({ settings, port, databaseUrl, demo, baseUrl, base = p
 export async function migrate(script, env) {
   const { code, output } = await node(script, { cwd: at(), env, check: false })
   if (code === 0) return
-  if (isEnding()) await new Promise(() => {})
   if (code === EXIT_CONFIG) throw new Stop(output.trim())
   throw new Stop('The database could not be brought up to date.', gist(output))
 }
