@@ -64,7 +64,7 @@ export const routes: RouteRecordRaw[] = [
     meta: { layout: 'signed-out', title: 'Sign in', public: true },
   },
   {
-    path: '/set-password/:token',
+    path: '/:purpose(invite|reset)/:token',
     ...named('set-password'),
     component: () => import('../pages/SetPasswordPage.vue'),
     props: true,

@@ -45,7 +45,7 @@ describe('somebody who is not signed in', () => {
 
   it('may open a one-time link', async () => {
     const router = start(nobody)
-    await router.push('/set-password/abc')
+    await router.push('/invite/abc')
     expect(router.currentRoute.value).toMatchObject({
       name: 'set-password',
       params: { token: 'abc' },
