@@ -8,7 +8,8 @@ import { getJson } from './http'
 export function catalogueQuery(network: string) {
   return queryOptions({
     queryKey: ['catalogue', network],
-    queryFn: ({ signal }) => getJson(fill(PATHS.catalogue, { network }), { schema: catalogueOutput, signal }),
+    queryFn: ({ signal }) =>
+      getJson(fill(PATHS.catalogue, { network }), { schema: catalogueOutput, signal }),
     staleTime: 5 * 60_000,
   })
 }

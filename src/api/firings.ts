@@ -2,7 +2,12 @@
 import { queryOptions } from '@tanstack/vue-query'
 import type { z } from 'zod'
 import { firingOutput, firingsOutput, lastFiringOutput } from '../../server/contract/firings.js'
-import type { firingsInput, FiringDetail, RevisionInput, voidInput } from '../../server/contract/firings.js'
+import type {
+  firingsInput,
+  FiringDetail,
+  RevisionInput,
+  voidInput,
+} from '../../server/contract/firings.js'
 import { fill, PATHS } from '../../server/contract/paths.js'
 import { getJson, sendJson, withQuery } from './http'
 
@@ -12,7 +17,8 @@ export type FiringsFilters = z.output<typeof firingsInput>
 export function firingsQuery(network: string, filters: FiringsFilters) {
   return queryOptions({
     queryKey: ['firings', network, filters],
-    queryFn: ({ signal }) => getJson(fill(PATHS.firings, { network }), { schema: firingsOutput, query: filters, signal }),
+    queryFn: ({ signal }) =>
+      getJson(fill(PATHS.firings, { network }), { schema: firingsOutput, query: filters, signal }),
     placeholderData: (before) => before,
   })
 }
@@ -22,13 +28,23 @@ export function firingsTotalQuery(network: string, filters: Partial<FiringsFilte
   return queryOptions({
     queryKey: ['firings', network, 'total', filters],
     queryFn: async ({ signal }) =>
-      (await getJson(fill(PATHS.firings, { network }), { schema: firingsOutput, query: { ...filters, pageSize: 1 }, signal })).total,
+      (
+        await getJson(fill(PATHS.firings, { network }), {
+          schema: firingsOutput,
+          query: { ...filters, pageSize: 1 },
+          signal,
+        })
+      ).total,
   })
 }
 
 /** The list as a file, whole, whatever page is shown. */
 export function firingsCsvHref(network: string, filters: FiringsFilters): string {
-  return withQuery(fill(PATHS.firingsCsv, { network }), { ...filters, page: undefined, pageSize: undefined })
+  return withQuery(fill(PATHS.firingsCsv, { network }), {
+    ...filters,
+    page: undefined,
+    pageSize: undefined,
+  })
 }
 
 /** One firing whole: lots, losses, revisions. */
@@ -39,7 +55,11 @@ export function firingQuery(network: string, firing: string) {
   })
 }
 
-export function getFiring(network: string, firing: string, signal?: AbortSignal): Promise<FiringDetail> {
+export function getFiring(
+  network: string,
+  firing: string,
+  signal?: AbortSignal,
+): Promise<FiringDetail> {
   return getJson(fill(PATHS.firing, { network, firing }), { schema: firingOutput, signal })
 }
 
@@ -48,15 +68,38 @@ export function lastFiringQuery(network: string, kiln: string, kind: string) {
   return queryOptions({
     queryKey: ['last-firing', network, kiln, kind],
     queryFn: async ({ signal }) =>
-      (await getJson(fill(PATHS.lastFiring, { network }), { schema: lastFiringOutput, query: { kiln, kind }, signal })).firing,
+      (
+        await getJson(fill(PATHS.lastFiring, { network }), {
+          schema: lastFiringOutput,
+          query: { kiln, kind },
+          signal,
+        })
+      ).firing,
   })
 }
 
 /** Writes a revision: sent twice with the same uid and body it is one. @throws {ApiError} `stale`, `different-body`, `invalid` ... */
-export function sendRevision(network: string, firing: string, revision: string, body: RevisionInput): Promise<FiringDetail> {
-  return sendJson(fill(PATHS.firingRevision, { network, firing, revision }), { method: 'PUT', body, schema: firingOutput })
+export function sendRevision(
+  network: string,
+  firing: string,
+  revision: string,
+  body: RevisionInput,
+): Promise<FiringDetail> {
+  return sendJson(fill(PATHS.firingRevision, { network, firing, revision }), {
+    method: 'PUT',
+    body,
+    schema: firingOutput,
+  })
 }
 
-export function voidFiring(network: string, firing: string, body: z.input<typeof voidInput>): Promise<FiringDetail> {
-  return sendJson(fill(PATHS.firingVoid, { network, firing }), { method: 'POST', body, schema: firingOutput })
+export function voidFiring(
+  network: string,
+  firing: string,
+  body: z.input<typeof voidInput>,
+): Promise<FiringDetail> {
+  return sendJson(fill(PATHS.firingVoid, { network, firing }), {
+    method: 'POST',
+    body,
+    schema: firingOutput,
+  })
 }

@@ -2,21 +2,44 @@ import { AxeBuilder } from '@axe-core/playwright'
 import type { Page } from '@playwright/test'
 import { expect, test } from '@playwright/test'
 import type { FiringDetail } from '../../server/contract/firings.js'
-import { EDUCATION_LEAD, firingOf, open, OWNER, packed, TECHNICIAN, write } from '../support/kilnRoom.js'
+import {
+  EDUCATION_LEAD,
+  firingOf,
+  open,
+  OWNER,
+  packed,
+  TECHNICIAN,
+  write,
+} from '../support/kilnRoom.js'
 
 const AT = `/${TECHNICIAN.network}`
 const board = (page: Page, name: string) => page.getByRole('group', { name, exact: true })
-const piece = (page: Page, lot: string, at: number) => board(page, lot).getByRole('button').nth(at - 1)
+const piece = (page: Page, lot: string, at: number) =>
+  board(page, lot)
+    .getByRole('button')
+    .nth(at - 1)
 const report = (firing: FiringDetail): string => `${AT}/firings/${firing.uid}/report`
 
 /** Two lots and a rest: 6 mugs, 4 bowls, 10 in no lot. */
-async function waitingFiring(page: Page, kind: 'glaze' | 'bisque' = 'glaze'): Promise<FiringDetail> {
+async function waitingFiring(
+  page: Page,
+  kind: 'glaze' | 'bisque' = 'glaze',
+): Promise<FiringDetail> {
   await open(page, TECHNICIAN, `${AT}/firings`)
-  return packed(page, TECHNICIAN, { kind, pieces: 20, lots: [{ pieces: 6, form: 'mugs' }, { pieces: 4, form: 'bowls' }] })
+  return packed(page, TECHNICIAN, {
+    kind,
+    pieces: 20,
+    lots: [
+      { pieces: 6, form: 'mugs' },
+      { pieces: 4, form: 'bowls' },
+    ],
+  })
 }
 
 test.describe('packing', () => {
-  test('a load of 100 pieces with three lots is packed, the rest counted by itself', async ({ page }) => {
+  test('a load of 100 pieces with three lots is packed, the rest counted by itself', async ({
+    page,
+  }) => {
     await open(page, TECHNICIAN, `${AT}/firings/new`)
     await page.getByLabel('Kiln', { exact: true }).selectOption({ index: 1 })
     await page.getByRole('spinbutton', { name: 'Pieces in all' }).fill('100')
@@ -34,7 +57,9 @@ test.describe('packing', () => {
     await expect(page.getByText('It waits for you on Today', { exact: false })).toBeVisible()
   })
 
-  test('what is missing is said beside its field, and the lots cannot hold more than the load', async ({ page }) => {
+  test('what is missing is said beside its field, and the lots cannot hold more than the load', async ({
+    page,
+  }) => {
     await open(page, TECHNICIAN, `${AT}/firings/new`)
     await page.getByRole('button', { name: 'Count a lot of like pieces' }).click()
     await page.getByRole('button', { name: 'Pack it' }).click()
@@ -72,10 +97,14 @@ test.describe('reporting', () => {
     await page.goto(report(firing))
     await page.getByRole('button', { name: 'All sound', exact: true }).click()
     await page.getByRole('button', { name: 'Report 20 pieces' }).click()
-    await expect(page.getByRole('heading', { level: 1 })).toContainText('None of 20 pieces was lost')
+    await expect(page.getByRole('heading', { level: 1 })).toContainText(
+      'None of 20 pieces was lost',
+    )
   })
 
-  test('two faults are marked by touch, one is taken back, and the firing says what was lost', async ({ page }) => {
+  test('two faults are marked by touch, one is taken back, and the firing says what was lost', async ({
+    page,
+  }) => {
     const firing = await waitingFiring(page)
     await page.goto(report(firing))
     await page.getByText('S-crack', { exact: true }).click()
@@ -88,7 +117,9 @@ test.describe('reporting', () => {
     await piece(page, 'Bowls', 1).click()
     await page.getByRole('button', { name: 'Others sound' }).click()
     await page.getByRole('button', { name: 'Report 20 pieces' }).click()
-    await expect(page.getByRole('heading', { level: 1 })).toContainText('1 of 20 pieces was lost: 1 waster; 1 second.')
+    await expect(page.getByRole('heading', { level: 1 })).toContainText(
+      '1 of 20 pieces was lost: 1 waster; 1 second.',
+    )
     await expect(page.getByText('S-crack: 1 waster')).toBeVisible()
     await expect(page.getByText('Warping: 1 second')).toBeVisible()
   })
@@ -105,7 +136,9 @@ test.describe('reporting', () => {
     await expect(page.getByRole('heading', { level: 1 })).toContainText('1 of 6 pieces was lost')
   })
 
-  test('any name of the trade finds its fault, and a further fault and a neighbour are noted on the piece', async ({ page }) => {
+  test('any name of the trade finds its fault, and a further fault and a neighbour are noted on the piece', async ({
+    page,
+  }) => {
     const firing = await waitingFiring(page)
     await page.goto(report(firing))
     await page.getByRole('button', { name: 'Other…' }).click()
@@ -117,7 +150,9 @@ test.describe('reporting', () => {
     await page.getByRole('button', { name: 'Another fault on the same piece' }).click()
     await page.getByRole('option', { name: 'Crazing', exact: true }).click()
     await page.getByRole('button', { name: 'Done' }).click()
-    await expect(piece(page, 'Mugs', 4)).toHaveAccessibleName('piece 4: waster, Handle or spout, also crazing, a neighbour did it')
+    await expect(piece(page, 'Mugs', 4)).toHaveAccessibleName(
+      'piece 4: waster, Handle or spout, also crazing, a neighbour did it',
+    )
   })
 
   test('a bisque offers no fault of the glaze', async ({ page }) => {
@@ -135,10 +170,15 @@ test.describe('reporting', () => {
     await page.getByRole('button', { name: 'Count Dunt, waster' }).click()
     await page.getByRole('spinbutton', { name: 'Dunt, waster: pieces' }).fill('95')
     await page.getByRole('button', { name: 'Report 80 pieces' }).click()
-    await expect(page.getByRole('heading', { level: 1 })).toContainText('80 of 80 pieces were lost: 80 wasters.')
+    await expect(page.getByRole('heading', { level: 1 })).toContainText(
+      '80 of 80 pieces were lost: 80 wasters.',
+    )
   })
 
-  test('without a connection everything is kept, through a reload, and sent once when tried again', async ({ page, context }) => {
+  test('without a connection everything is kept, through a reload, and sent once when tried again', async ({
+    page,
+    context,
+  }) => {
     const firing = await waitingFiring(page)
     await page.goto(report(firing))
     await page.getByText('S-crack', { exact: true }).click()
@@ -171,7 +211,9 @@ test.describe('reporting', () => {
     await expect(piece(page, 'Bowls', 4)).toHaveAccessibleName('piece 4: waster, S-crack')
   })
 
-  test('a firing that somebody reported meanwhile shows both, and mine goes on top as an amendment', async ({ page }) => {
+  test('a firing that somebody reported meanwhile shows both, and mine goes on top as an amendment', async ({
+    page,
+  }) => {
     const firing = await waitingFiring(page)
     await page.goto(report(firing))
     await page.getByText('S-crack', { exact: true }).click()
@@ -179,7 +221,16 @@ test.describe('reporting', () => {
     await page.getByRole('button', { name: 'Others sound' }).click()
     const sound = firing.lots.map((lot) => ({ lot: lot.uid, notLookedAt: 0, losses: [] }))
     await write(page, TECHNICIAN.network, firing.uid, {
-      kind: 'report', base: 1, deviceTime: null, report: { openedAt: null, openingTemperatureC: null, wholeLoadFailed: null, note: null, lots: sound },
+      kind: 'report',
+      base: 1,
+      deviceTime: null,
+      report: {
+        openedAt: null,
+        openingTemperatureC: null,
+        wholeLoadFailed: null,
+        note: null,
+        lots: sound,
+      },
     })
     await page.getByRole('button', { name: 'Report 20 pieces' }).click()
     const changed = page.getByRole('dialog', { name: 'This firing was changed meanwhile' })
@@ -187,7 +238,10 @@ test.describe('reporting', () => {
     await changed.getByRole('button', { name: 'Put mine on top' }).click()
     await page.getByRole('button', { name: 'Amend…' }).click()
     await page.getByRole('button', { name: 'Counted again.' }).click()
-    await page.getByRole('dialog', { name: 'Amend the report' }).getByRole('button', { name: 'Amend', exact: true }).click()
+    await page
+      .getByRole('dialog', { name: 'Amend the report' })
+      .getByRole('button', { name: 'Amend', exact: true })
+      .click()
     await expect(page.getByRole('heading', { level: 1 })).toContainText('1 of 20 pieces was lost')
   })
 })
@@ -208,7 +262,11 @@ test('an amendment needs a reason, and the earlier version stays beside it', asy
   await why.getByRole('button', { name: 'Amend', exact: true }).click()
   await expect(page.getByRole('heading', { level: 1 })).toContainText('1 of 20 pieces was lost')
   const written = page.getByRole('region', { name: 'What was written' })
-  await expect(written.getByRole('listitem')).toHaveText([/amended.*1 lost.*Rang it again/s, /reported.*all sound/s, /packed.*20 pieces/s])
+  await expect(written.getByRole('listitem')).toHaveText([
+    /amended.*1 lost.*Rang it again/s,
+    /reported.*all sound/s,
+    /packed.*20 pieces/s,
+  ])
 })
 
 test('an owner voids a firing with a reason, and it stays to be read', async ({ page }) => {
@@ -226,7 +284,8 @@ test('an education lead reads firings, and packs, reports and voids none', async
   await open(page, EDUCATION_LEAD, `${AT}/firings?status=reported`)
   await page.getByRole('row').nth(1).getByRole('link').click()
   await expect(page.getByRole('heading', { level: 1 })).toContainText('pieces')
-  for (const name of ['Report', 'Amend the report', 'Further']) await expect(page.getByText(name, { exact: true })).toHaveCount(0)
+  for (const name of ['Report', 'Amend the report', 'Further'])
+    await expect(page.getByText(name, { exact: true })).toHaveCount(0)
   await page.goto(`${page.url()}/report`)
   await expect(page.getByText('Your roles do not open this page')).toBeVisible()
 })
@@ -239,7 +298,10 @@ test('the words of the list are its address, and go into the file', async ({ pag
   await page.getByRole('button', { name: 'Losses: with or without losses' }).click()
   await page.getByRole('option', { name: 'with losses', exact: true }).click()
   await expect(page).toHaveURL(/kind=bisque&lost=some/)
-  await expect(page.getByRole('link', { name: 'as CSV' })).toHaveAttribute('href', /firings\.csv\?kind=bisque&lost=some/)
+  await expect(page.getByRole('link', { name: 'as CSV' })).toHaveAttribute(
+    'href',
+    /firings\.csv\?kind=bisque&lost=some/,
+  )
   await page.reload()
   await expect(page.getByRole('button', { name: 'Kind of firing: Bisque firings' })).toBeVisible()
 })
@@ -248,7 +310,10 @@ const PAGES = {
   list: { path: () => `${AT}/firings`, sign: 'reported' },
   load: { path: () => `${AT}/firings/new`, sign: 'Pack it' },
   report: { path: report, sign: 'All sound' },
-  firing: { path: (firing: FiringDetail) => `${AT}/firings/${firing.uid}`, sign: 'What was written' },
+  firing: {
+    path: (firing: FiringDetail) => `${AT}/firings/${firing.uid}`,
+    sign: 'What was written',
+  },
 }
 for (const theme of ['light', 'dark'] as const) {
   for (const [name, { path, sign }] of Object.entries(PAGES)) {
@@ -259,7 +324,9 @@ for (const theme of ['light', 'dark'] as const) {
       await page.setViewportSize({ width, height: 3000 })
       await page.goto(path(await waitingFiring(page)))
       await expect(page.getByText(sign, { exact: true }).first()).toBeAttached()
-      const { violations } = await new AxeBuilder({ page }).withTags(['wcag2a', 'wcag2aa', 'wcag21aa', 'wcag22aa']).analyze()
+      const { violations } = await new AxeBuilder({ page })
+        .withTags(['wcag2a', 'wcag2aa', 'wcag21aa', 'wcag22aa'])
+        .analyze()
       expect(violations.map(({ id, nodes }) => [id, nodes.map(({ html }) => html)])).toEqual([])
     })
   }

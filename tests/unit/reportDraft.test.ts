@@ -2,12 +2,32 @@ import { describe, expect, it } from 'vitest'
 import fc from 'fast-check'
 import type { LotDraft, ReportDraft } from '../../src/composables/firings/reportDraft.js'
 import {
-  cellsOf, count, countsOf, draftOf, markAll, markOf, marked, rebase, reportBodyOf, sayOfTheOthers, setCount, setMark, setNotLookedAt, touch, unsaid,
+  cellsOf,
+  count,
+  countsOf,
+  draftOf,
+  markAll,
+  markOf,
+  marked,
+  rebase,
+  reportBodyOf,
+  sayOfTheOthers,
+  setCount,
+  setMark,
+  setNotLookedAt,
+  touch,
+  unsaid,
 } from '../../src/composables/firings/reportDraft.js'
 import { reportBody } from '../../server/contract/firings.js'
 import { makeFiring, makeLoss, makeLot, uidOf } from '../support/firingViews.js'
 
-const lotOf = (fired: number): LotDraft => ({ lot: uidOf(1), fired, said: false, notLookedAt: 0, entries: [] })
+const lotOf = (fired: number): LotDraft => ({
+  lot: uidOf(1),
+  fired,
+  said: false,
+  notLookedAt: 0,
+  entries: [],
+})
 const crack = markOf('s-crack', 'waster')
 const pinholes = markOf('pinholing', 'refire')
 
@@ -35,12 +55,21 @@ describe('touching a piece', () => {
 
 describe('the board of a lot', () => {
   it('has a cell for every piece, marked at its place, with the fault to read out', () => {
-    expect(cellsOf(touch(lotOf(3), 1, crack))).toEqual([{ kind: 'first' }, { kind: 'waster', note: 'S-crack' }, { kind: 'first' }])
+    expect(cellsOf(touch(lotOf(3), 1, crack))).toEqual([
+      { kind: 'first' },
+      { kind: 'waster', note: 'S-crack' },
+      { kind: 'first' },
+    ])
   })
 
   it('hatches the last unmarked pieces when some were not looked at', () => {
     const lot = setNotLookedAt(touch(lotOf(4), 3, crack), 2)
-    expect(cellsOf(lot).map(({ kind }) => kind)).toEqual(['first', 'notLookedAt', 'notLookedAt', 'waster'])
+    expect(cellsOf(lot).map(({ kind }) => kind)).toEqual([
+      'first',
+      'notLookedAt',
+      'notLookedAt',
+      'waster',
+    ])
   })
 
   it('reads out further faults and the neighbour', () => {
@@ -66,25 +95,38 @@ describe('never more failed than there were', () => {
     const step = fc.oneof(
       fc.record({ do: fc.constant('touch' as const), at: fc.nat(99), mark: fc.nat(3) }),
       fc.record({ do: fc.constant('hide' as const), at: fc.nat(120), mark: fc.nat(3) }),
-      fc.record({ do: fc.constant('count' as const), at: fc.integer({ min: -50, max: 150 }), mark: fc.nat(3) }),
+      fc.record({
+        do: fc.constant('count' as const),
+        at: fc.integer({ min: -50, max: 150 }),
+        mark: fc.nat(3),
+      }),
     )
     fc.assert(
-      fc.property(fc.integer({ min: 1, max: 100 }), fc.array(step, { maxLength: 40 }), (fired, steps) => {
-        let lot = lotOf(fired)
-        for (const { do: what, at, mark } of steps) {
-          const chosen = marks[mark] ?? crack
-          if (what === 'hide') lot = setNotLookedAt(lot, at)
-          else if (fired > 60) lot = count(lot, chosen, at)
-          else if (what === 'touch') lot = touch(lot, at % fired, chosen)
-        }
-        expect(marked(lot) + lot.notLookedAt).toBeLessThanOrEqual(fired)
-      }),
+      fc.property(
+        fc.integer({ min: 1, max: 100 }),
+        fc.array(step, { maxLength: 40 }),
+        (fired, steps) => {
+          let lot = lotOf(fired)
+          for (const { do: what, at, mark } of steps) {
+            const chosen = marks[mark] ?? crack
+            if (what === 'hide') lot = setNotLookedAt(lot, at)
+            else if (fired > 60) lot = count(lot, chosen, at)
+            else if (what === 'touch') lot = touch(lot, at % fired, chosen)
+          }
+          expect(marked(lot) + lot.notLookedAt).toBeLessThanOrEqual(fired)
+        },
+      ),
     )
   })
 })
 
 describe('a draft of a firing', () => {
-  const lot = makeLot({ uid: uidOf(1), pieces: 12, turnedAway: 2, losses: [makeLoss({ uid: uidOf(9), lot: uidOf(1), outcome: 'turned-away', pieces: 2 })] })
+  const lot = makeLot({
+    uid: uidOf(1),
+    pieces: 12,
+    turnedAway: 2,
+    losses: [makeLoss({ uid: uidOf(9), lot: uidOf(1), outcome: 'turned-away', pieces: 2 })],
+  })
 
   it('reports a packed one: nothing said, turned-away pieces not on the board', () => {
     const draft = draftOf(makeFiring({ status: 'packed', lots: [lot] }), uidOf(50))
@@ -94,20 +136,35 @@ describe('a draft of a firing', () => {
   })
 
   it('amends a reported one: starts from what was reported, with the uids of its losses', () => {
-    const reported = makeLot({ uid: uidOf(1), pieces: 12, wasters: 2, losses: [makeLoss({ uid: uidOf(9), lot: uidOf(1), pieces: 2 })] })
-    const draft = draftOf(makeFiring({ status: 'reported', revision: 2, lots: [reported] }), uidOf(50))
+    const reported = makeLot({
+      uid: uidOf(1),
+      pieces: 12,
+      wasters: 2,
+      losses: [makeLoss({ uid: uidOf(9), lot: uidOf(1), pieces: 2 })],
+    })
+    const draft = draftOf(
+      makeFiring({ status: 'reported', revision: 2, lots: [reported] }),
+      uidOf(50),
+    )
     expect(draft).toMatchObject({ kind: 'amend', base: 2 })
     expect(draft.lots[0]).toMatchObject({ said: true })
     const { report } = reportBodyOf(draft, () => uidOf(99))
-    expect(report.lots[0]?.losses).toMatchObject([{ uid: uidOf(9), fault: 's-crack', outcome: 'waster', pieces: 2 }])
+    expect(report.lots[0]?.losses).toMatchObject([
+      { uid: uidOf(9), fault: 's-crack', outcome: 'waster', pieces: 2 },
+    ])
   })
 
   it('makes a body that the contract accepts, with equal marks of a lot as one loss', () => {
     let next = 100
     const draft = draftOf(makeFiring({ status: 'packed', lots: [lot] }), uidOf(50))
-    const touched: ReportDraft = { ...draft, lots: [touch(touch(draft.lots[0] ?? lotOf(1), 0, crack), 1, crack)] }
+    const touched: ReportDraft = {
+      ...draft,
+      lots: [touch(touch(draft.lots[0] ?? lotOf(1), 0, crack), 1, crack)],
+    }
     const { report, lossUids } = reportBodyOf(touched, () => uidOf((next += 1)))
-    expect(reportBody.parse(report).lots[0]?.losses).toMatchObject([{ pieces: 2, fault: 's-crack' }])
+    expect(reportBody.parse(report).lots[0]?.losses).toMatchObject([
+      { pieces: 2, fault: 's-crack' },
+    ])
     expect(reportBodyOf({ ...touched, lossUids }, () => uidOf((next += 1))).report).toEqual(report)
   })
 
@@ -118,23 +175,41 @@ describe('a draft of a firing', () => {
   })
 
   it('marks every piece when the whole load failed', () => {
-    expect(markAll([lotOf(3), lotOf(70)], pinholes).map(countsOf)).toMatchObject([{ refires: 3 }, { refires: 70 }])
+    expect(markAll([lotOf(3), lotOf(70)], pinholes).map(countsOf)).toMatchObject([
+      { refires: 3 },
+      { refires: 70 },
+    ])
   })
 })
 
 describe('rebasing on a newer revision', () => {
-  const before = makeFiring({ status: 'packed', lots: [makeLot({ uid: uidOf(1), pieces: 5 }), makeLot({ uid: uidOf(2), pieces: 8 })] })
+  const before = makeFiring({
+    status: 'packed',
+    lots: [makeLot({ uid: uidOf(1), pieces: 5 }), makeLot({ uid: uidOf(2), pieces: 8 })],
+  })
   const draft = draftOf(before, uidOf(50))
-  const mine: ReportDraft = { ...draft, lots: draft.lots.map((lot) => touch(touch(lot, 0, crack), 4, pinholes)) }
+  const mine: ReportDraft = {
+    ...draft,
+    lots: draft.lots.map((lot) => touch(touch(lot, 0, crack), 4, pinholes)),
+  }
 
   it('keeps the marks that still fit and drops lots that are gone', () => {
-    const now = makeFiring({ status: 'packed', revision: 2, lots: [makeLot({ uid: uidOf(2), pieces: 1 }), makeLot({ uid: uidOf(3), pieces: 4 })] })
+    const now = makeFiring({
+      status: 'packed',
+      revision: 2,
+      lots: [makeLot({ uid: uidOf(2), pieces: 1 }), makeLot({ uid: uidOf(3), pieces: 4 })],
+    })
     const next = rebase(mine, now, uidOf(51))
     expect(next).toMatchObject({ base: 2, kind: 'report', revision: uidOf(51) })
-    expect(next.lots.map((lot) => [lot.lot, marked(lot)])).toEqual([[uidOf(2), 1], [uidOf(3), 0]])
+    expect(next.lots.map((lot) => [lot.lot, marked(lot)])).toEqual([
+      [uidOf(2), 1],
+      [uidOf(3), 0],
+    ])
   })
 
   it('becomes an amendment when somebody else has reported it', () => {
-    expect(rebase(mine, { ...before, status: 'reported', revision: 2 }, uidOf(51)).kind).toBe('amend')
+    expect(rebase(mine, { ...before, status: 'reported', revision: 2 }, uidOf(51)).kind).toBe(
+      'amend',
+    )
   })
 })

@@ -63,9 +63,18 @@ export function outcomeWords(counts: LotCounts): string {
 }
 
 /** "S-crack, also crazing: 2 wasters (a neighbour did it)". */
-export function lossInWords(loss: { fault: string; also: readonly string[]; outcome: LossOutcome; pieces: number; neighbour: boolean }): string {
+export function lossInWords(loss: {
+  fault: string
+  also: readonly string[]
+  outcome: LossOutcome
+  pieces: number
+  neighbour: boolean
+}): string {
   const name = (id: string): string => faultNode(id)?.name ?? id
-  const also = loss.also.length > 0 ? `, also ${loss.also.map((id) => name(id).toLowerCase()).join(' and ')}` : ''
+  const also =
+    loss.also.length > 0
+      ? `, also ${loss.also.map((id) => name(id).toLowerCase()).join(' and ')}`
+      : ''
   return `${name(loss.fault)}${also}: ${outcomeCount(loss.outcome, loss.pieces)}${loss.neighbour ? ' (a neighbour did it)' : ''}`
 }
 
@@ -82,11 +91,15 @@ export interface FiringInWords extends LotCounts {
 /** The answer that a firing's page begins with. */
 export function firingAnswer(firing: FiringInWords): Stretch[] {
   if (firing.status === 'packed') {
-    return [{ text: capital(piecesInWords(firing.pieces, firing.about)), strong: true }, { text: ' went in; what came out is not reported yet.' }]
+    return [
+      { text: capital(piecesInWords(firing.pieces, firing.about)), strong: true },
+      { text: ' went in; what came out is not reported yet.' },
+    ]
   }
   const lost = firing.wasters + firing.refires
   const seen = fired(firing) - firing.notLookedAt
-  if (seen <= 0) return [{ text: 'No piece', strong: true }, { text: ' of this firing was looked at.' }]
+  if (seen <= 0)
+    return [{ text: 'No piece', strong: true }, { text: ' of this firing was looked at.' }]
   const of = `of ${piecesInWords(seen, firing.about)}`
   const further = also(firing)
   if (lost === 0) return [{ text: `None ${of}`, strong: true }, { text: ` was lost${further}.` }]

@@ -1,5 +1,10 @@
 /** Which faults are offered, in which order: the plain names first, the tree behind them. */
-import { AT_THE_KILN, FAULT_TREE, faultNode, withAncestors } from '../../../server/shared/faults/tree.js'
+import {
+  AT_THE_KILN,
+  FAULT_TREE,
+  faultNode,
+  withAncestors,
+} from '../../../server/shared/faults/tree.js'
 import type { FaultNode } from '../../../server/shared/faults/tree.js'
 import { faultRule } from '../../../server/shared/faults/rules.js'
 import type { FailedOutcome } from '../../../server/shared/counts.js'

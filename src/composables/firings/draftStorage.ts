@@ -22,7 +22,10 @@ export function readDraft<T extends { v: number }>(key: string, v: number): Kept
 /** True when it is kept; storage may be forbidden or full, and the page must then say so. */
 export function keepDraft<T>(key: string, draft: T): boolean {
   try {
-    localStorage.setItem(key, JSON.stringify({ at: new Date().toISOString(), draft } satisfies Kept<T>))
+    localStorage.setItem(
+      key,
+      JSON.stringify({ at: new Date().toISOString(), draft } satisfies Kept<T>),
+    )
     return true
   } catch {
     return false

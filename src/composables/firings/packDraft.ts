@@ -210,9 +210,11 @@ export function packProblems(draft: PackDraft): Record<string, string> {
   if (draft.kiln === null) missing.kiln = 'Which kiln?'
   if (draft.localDate === null) missing.localDate = 'Which day?'
   if (draft.pieces === null) missing.pieces = 'How many pieces in all? About is fine.'
-  for (const [index, lot] of draft.lots.entries()) if (lot.pieces === null) missing[`lots.${index}.pieces`] = 'How many pieces?'
+  for (const [index, lot] of draft.lots.entries())
+    if (lot.pieces === null) missing[`lots.${index}.pieces`] = 'How many pieces?'
   for (const [index, away] of draft.turnedAway.entries()) {
-    if (away.fault === null) missing[`turnedAway.${index}.fault`] = 'What did you see? Not named is fine.'
+    if (away.fault === null)
+      missing[`turnedAway.${index}.fault`] = 'What did you see? Not named is fine.'
     if (away.pieces === null) missing[`turnedAway.${index}.pieces`] = 'How many?'
   }
   return { ...checkLoad(packBodyOf(draft)), ...missing }
@@ -257,16 +259,26 @@ export function packBodyOf(draft: PackDraft): PackBody {
 }
 
 /** A load moved to another studio: levels that are not in its lists are let go, the others stay. */
-export function fitToStudio(draft: PackDraft, catalogue: Catalogue, studio: string | null): PackDraft {
+export function fitToStudio(
+  draft: PackDraft,
+  catalogue: Catalogue,
+  studio: string | null,
+): PackDraft {
   const ok = (uid: string): boolean => {
     const level = catalogue.levels.find((each) => each.uid === uid)
     return level === undefined || level.studio === null || level.studio === studio
   }
-  const fit = (value: LevelChoice): LevelChoice => (Array.isArray(value) ? value.filter(ok) : value !== null && ok(value) ? value : null)
+  const fit = (value: LevelChoice): LevelChoice =>
+    Array.isArray(value) ? value.filter(ok) : value !== null && ok(value) ? value : null
   return {
     ...draft,
     programme: fit(draft.programme) as string | null,
-    lots: draft.lots.map((lot) => ({ ...lot, levels: Object.fromEntries(Object.entries(lot.levels).map(([factor, value]) => [factor, fit(value)])) })),
+    lots: draft.lots.map((lot) => ({
+      ...lot,
+      levels: Object.fromEntries(
+        Object.entries(lot.levels).map(([factor, value]) => [factor, fit(value)]),
+      ),
+    })),
   }
 }
 

@@ -33,7 +33,13 @@ export function usePack({ network, edit, quick }: Options) {
   const user = session.user?.uid ?? ''
   const recent = useRecentChoices(user, network())
   const catalogue = useQuery(computed(() => catalogueQuery(network())))
-  const editing = useQuery(computed(() => ({ ...firingQuery(network(), edit() ?? ''), enabled: edit() !== null, staleTime: 0 })))
+  const editing = useQuery(
+    computed(() => ({
+      ...firingQuery(network(), edit() ?? ''),
+      enabled: edit() !== null,
+      staleTime: 0,
+    })),
+  )
   /** Why a reported load is corrected. */
   const reason = ref('')
   /** Somebody else changed the firing meanwhile. */
@@ -47,19 +53,32 @@ export function usePack({ network, edit, quick }: Options) {
     kiln: () => recent.lists.value.kiln?.[0],
     kind: () => recent.lists.value.kind?.[0],
   })
-  const last = useQuery(computed(() => ({
-    ...lastFiringQuery(network(), form.values.kiln ?? '', form.values.kind),
-    enabled: edit() === null && !quick() && form.values.kiln !== null,
-  })))
+  const last = useQuery(
+    computed(() => ({
+      ...lastFiringQuery(network(), form.values.kiln ?? '', form.values.kind),
+      enabled: edit() === null && !quick() && form.values.kiln !== null,
+    })),
+  )
 
   const ready = ref(false)
-  watch([() => catalogue.data.value, () => editing.data.value, () => editing.isFetchedAfterMount.value], () => {
-    if (ready.value || !catalogue.data.value || (edit() !== null && (!editing.data.value || !editing.isFetchedAfterMount.value))) return
-    ready.value = true
-    begin()
-  }, { immediate: true })
+  watch(
+    [() => catalogue.data.value, () => editing.data.value, () => editing.isFetchedAfterMount.value],
+    () => {
+      if (
+        ready.value ||
+        !catalogue.data.value ||
+        (edit() !== null && (!editing.data.value || !editing.isFetchedAfterMount.value))
+      )
+        return
+      ready.value = true
+      begin()
+    },
+    { immediate: true },
+  )
   // A load and a mere report are two drafts: one does not overwrite the other.
-  watch(quick, () => { if (ready.value) begin() })
+  watch(quick, () => {
+    if (ready.value) begin()
+  })
 
   function begin(): void {
     const about = edit() === null ? (quick() ? 'report-only' : 'pack') : `pack.${edit()}`
@@ -72,18 +91,24 @@ export function usePack({ network, edit, quick }: Options) {
   }
 
   async function submit(draft: PackDraft): Promise<FiringDetail> {
-    const fields = { ...packProblems(draft), ...(amends() && !reason.value.trim() ? { reason: 'Say why.' } : {}) }
-    if (Object.keys(fields).length > 0) throw new ApiError({ status: 400, code: 'invalid', message: '', fields })
+    const fields = {
+      ...packProblems(draft),
+      ...(amends() && !reason.value.trim() ? { reason: 'Say why.' } : {}),
+    }
+    if (Object.keys(fields).length > 0)
+      throw new ApiError({ status: 400, code: 'invalid', message: '', fields })
     try {
       return await sendRevision(network(), draft.firing, draft.revision, bodyOf(draft))
     } catch (error) {
       if (!(error instanceof ApiError)) throw error
-      if (error.code === 'different-body' || error.code === 'stale') return await sendOnTop(draft, error)
+      if (error.code === 'different-body' || error.code === 'stale')
+        return await sendOnTop(draft, error)
       throw beside(error)
     }
   }
 
-  const amends = (): boolean => edit() !== null && (meanwhile.value ?? editing.data.value)?.status === 'reported'
+  const amends = (): boolean =>
+    edit() !== null && (meanwhile.value ?? editing.data.value)?.status === 'reported'
 
   function bodyOf(draft: PackDraft): RevisionInput {
     const { base, deviceTime } = draft
@@ -91,24 +116,41 @@ export function usePack({ network, edit, quick }: Options) {
     const now = editing.data.value
     if (!amends() || !now) return { kind: 'pack', base, deviceTime, pack }
     const { report } = reportBodyOf(draftOf(now, draft.revision), makeUid)
-    const lots = [...pack.lots.map(({ uid }) => uid), pack.rest].map((lot) => report.lots.find((each) => each.lot === lot) ?? { lot, notLookedAt: 0, losses: [] })
-    return { kind: 'amend', base, deviceTime, pack, report: { ...report, lots }, reason: reason.value }
+    const lots = [...pack.lots.map(({ uid }) => uid), pack.rest].map(
+      (lot) => report.lots.find((each) => each.lot === lot) ?? { lot, notLookedAt: 0, losses: [] },
+    )
+    return {
+      kind: 'amend',
+      base,
+      deviceTime,
+      pack,
+      report: { ...report, lots },
+      reason: reason.value,
+    }
   }
 
   /** An earlier try of ours had arrived: what was changed since goes on top of it. Someone else's change is shown. */
   async function sendOnTop(draft: PackDraft, refusal: ApiError): Promise<FiringDetail> {
     const now = await getFiring(network(), draft.firing)
-    const ours = now.status === 'packed' && now.revisions.at(-1)?.number === now.revision && newest(now)?.uid === draft.revision
+    const ours =
+      now.status === 'packed' &&
+      now.revisions.at(-1)?.number === now.revision &&
+      newest(now)?.uid === draft.revision
     if (!ours) {
       meanwhile.value = now
-      throw new ApiError({ status: refusal.status, code: refusal.code, message: 'Somebody changed this firing meanwhile. What you entered is still here.' })
+      throw new ApiError({
+        status: refusal.status,
+        code: refusal.code,
+        message: 'Somebody changed this firing meanwhile. What you entered is still here.',
+      })
     }
     Object.assign(form.values, { base: now.revision, revision: makeUid() })
     const next = { ...draft, base: form.values.base, revision: form.values.revision }
     return sendRevision(network(), next.firing, next.revision, bodyOf(next))
   }
 
-  const newest = (firing: FiringDetail) => firing.revisions.find(({ number }) => number === firing.revision)
+  const newest = (firing: FiringDetail) =>
+    firing.revisions.find(({ number }) => number === firing.revision)
 
   /** After a look at what changed: mine on top of it. */
   async function putOnTop(): Promise<void> {
@@ -121,7 +163,9 @@ export function usePack({ network, edit, quick }: Options) {
 
   /** Paths of the server's messages as the form has them. */
   function beside(error: ApiError): ApiError {
-    const fields = Object.fromEntries(Object.entries(error.fields).map(([path, message]) => [path.replace(/^pack\./, ''), message]))
+    const fields = Object.fromEntries(
+      Object.entries(error.fields).map(([path, message]) => [path.replace(/^pack\./, ''), message]),
+    )
     return new ApiError({ status: error.status, code: error.code, message: error.message, fields })
   }
 
@@ -129,10 +173,30 @@ export function usePack({ network, edit, quick }: Options) {
     recent.remember(draft)
     pack.drop()
     queries.setQueryData(firingQuery(network(), firing.uid).queryKey, firing)
-    for (const key of ['firings', 'today', 'losses', 'catalogue', 'last-firing']) void queries.invalidateQueries({ queryKey: [key, network()] })
-    if (!quick()) toast.show(edit() === null ? 'Packed. It waits for its report on Today.' : 'The load is corrected.')
-    await router.replace({ name: quick() ? 'firing-report' : 'firing', params: { network: network(), id: firing.uid } })
+    for (const key of ['firings', 'today', 'losses', 'catalogue', 'last-firing'])
+      void queries.invalidateQueries({ queryKey: [key, network()] })
+    if (!quick())
+      toast.show(
+        edit() === null ? 'Packed. It waits for its report on Today.' : 'The load is corrected.',
+      )
+    await router.replace({
+      name: quick() ? 'firing-report' : 'firing',
+      params: { network: network(), id: firing.uid },
+    })
   }
 
-  return { catalogue, editing, last, form, pack, recent, reason, meanwhile, ready, amends: computed(amends), send, putOnTop }
+  return {
+    catalogue,
+    editing,
+    last,
+    form,
+    pack,
+    recent,
+    reason,
+    meanwhile,
+    ready,
+    amends: computed(amends),
+    send,
+    putOnTop,
+  }
 }

@@ -5,7 +5,16 @@ import type { FiringDetail } from '../../../server/contract/firings.js'
 import { localTime } from '../../../server/shared/zonedTime.js'
 import { dropDraft, keepDraft, readDraft } from './draftStorage'
 import type { PackDraft, PackLot } from './packDraft'
-import { asLastTime, classLevelOf, duplicateOf, emptyLot, emptyPack, fitToStudio, isBegun, packOf } from './packDraft'
+import {
+  asLastTime,
+  classLevelOf,
+  duplicateOf,
+  emptyLot,
+  emptyPack,
+  fitToStudio,
+  isBegun,
+  packOf,
+} from './packDraft'
 
 interface Options {
   values: PackDraft
@@ -16,7 +25,13 @@ interface Options {
 }
 
 /** A load while it is packed: kept on this device, filled from what is known, its lots added, doubled and taken away. */
-export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: lastKind }: Options) {
+export function usePackDraft({
+  values,
+  reset,
+  catalogue,
+  kiln: lastKiln,
+  kind: lastKind,
+}: Options) {
   const kept = ref(true)
   /** When what is shown was begun, where it was taken up again. */
   const takenUp = ref<string | null>(null)
@@ -28,11 +43,17 @@ export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: l
 
   const kilns = computed(() => {
     const all = catalogue()
-    const packs = new Set(all?.studios.filter(({ abilities }) => abilities['firings.pack']).map(({ uid }) => uid))
-    return (all?.kilns ?? []).filter((each) => packs.has(each.studio) && (!each.archived || each.uid === values.kiln))
+    const packs = new Set(
+      all?.studios.filter(({ abilities }) => abilities['firings.pack']).map(({ uid }) => uid),
+    )
+    return (all?.kilns ?? []).filter(
+      (each) => packs.has(each.studio) && (!each.archived || each.uid === values.kiln),
+    )
   })
   const kiln = computed(() => kilns.value.find(({ uid }) => uid === values.kiln) ?? null)
-  const studio = computed(() => catalogue()?.studios.find(({ uid }) => uid === kiln.value?.studio) ?? null)
+  const studio = computed(
+    () => catalogue()?.studios.find(({ uid }) => uid === kiln.value?.studio) ?? null,
+  )
 
   /** Takes up what was kept under this key, or begins anew (from a firing, to correct its load). */
   function begin(storageKey: string, firing: FiringDetail | null): void {
@@ -48,7 +69,9 @@ export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: l
   }
 
   function fresh(): PackDraft {
-    const usual = kilns.value.find(({ uid }) => uid === lastKiln()) ?? (kilns.value.length === 1 ? kilns.value[0] : undefined)
+    const usual =
+      kilns.value.find(({ uid }) => uid === lastKiln()) ??
+      (kilns.value.length === 1 ? kilns.value[0] : undefined)
     const draft = { ...emptyPack(makeUid), kiln: usual?.uid ?? null }
     const kind = lastKind()
     return fill(kind ? { ...draft, kind: kind as PackDraft['kind'] } : draft)
@@ -58,8 +81,14 @@ export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: l
   function fill(draft: PackDraft): PackDraft {
     const mine = kilns.value.find(({ uid }) => uid === draft.kiln)
     const zone = catalogue()?.studios.find(({ uid }) => uid === mine?.studio)?.timeZone
-    const localDate = draft.localDate === filled.localDate ? (zone ? localTime(new Date(), zone).day : null) : draft.localDate
-    const kilnNumber = draft.kilnNumber === filled.kilnNumber ? (mine?.nextNumber ?? null) : draft.kilnNumber
+    const localDate =
+      draft.localDate === filled.localDate
+        ? zone
+          ? localTime(new Date(), zone).day
+          : null
+        : draft.localDate
+    const kilnNumber =
+      draft.kilnNumber === filled.kilnNumber ? (mine?.nextNumber ?? null) : draft.kilnNumber
     filled.localDate = localDate
     filled.kilnNumber = kilnNumber
     return { ...draft, localDate, kilnNumber }
@@ -78,7 +107,8 @@ export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: l
   function chooseKiln(uid: string | null): void {
     values.kiln = uid
     const all = catalogue()
-    if (all && values.base === 0) Object.assign(values, fitToStudio(fill(values), all, studio.value?.uid ?? null))
+    if (all && values.base === 0)
+      Object.assign(values, fitToStudio(fill(values), all, studio.value?.uid ?? null))
   }
 
   function chooseKind(kind: PackDraft['kind']): void {
@@ -90,12 +120,17 @@ export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: l
   /** A programme brings its cone. */
   function chooseProgramme(uid: string | null): void {
     values.programme = uid
-    values.cone = catalogue()?.levels.find((level) => level.uid === uid)?.attributes.cone ?? values.cone
+    values.cone =
+      catalogue()?.levels.find((level) => level.uid === uid)?.attributes.cone ?? values.cone
   }
 
-  watch(values, () => {
-    if (key && (isBegun(values) || takenUp.value)) kept.value = keepDraft(key, values)
-  }, { deep: true })
+  watch(
+    values,
+    () => {
+      if (key && (isBegun(values) || takenUp.value)) kept.value = keepDraft(key, values)
+    },
+    { deep: true },
+  )
 
   function addLot(): void {
     const lot = emptyLot(makeUid)
@@ -132,7 +167,8 @@ export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: l
   function setLevel(lot: PackLot, factor: string, value: string | string[] | null): void {
     lot.levels[factor] = value
     const all = catalogue()
-    if (factor === 'class' && all && !Array.isArray(value)) lot.levels.class_level = classLevelOf(all, value) ?? lot.levels.class_level ?? null
+    if (factor === 'class' && all && !Array.isArray(value))
+      lot.levels.class_level = classLevelOf(all, value) ?? lot.levels.class_level ?? null
   }
 
   function copyLast(last: FiringDetail): void {
@@ -141,7 +177,12 @@ export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: l
   }
 
   function addAway(): void {
-    values.turnedAway.push({ uid: makeUid(), lot: open.value ?? values.rest, fault: null, pieces: 1 })
+    values.turnedAway.push({
+      uid: makeUid(),
+      lot: open.value ?? values.rest,
+      fault: null,
+      pieces: 1,
+    })
   }
 
   /** It arrived, or is given up: nothing is left to keep. */
@@ -150,5 +191,24 @@ export function usePackDraft({ values, reset, catalogue, kiln: lastKiln, kind: l
     key = ''
   }
 
-  return { kept, takenUp, open, kilns, kiln, studio, begin, startAfresh, chooseKiln, chooseKind, chooseProgramme, addLot, duplicate, remove, setLevel, copyLast, addAway, drop }
+  return {
+    kept,
+    takenUp,
+    open,
+    kilns,
+    kiln,
+    studio,
+    begin,
+    startAfresh,
+    chooseKiln,
+    chooseKind,
+    chooseProgramme,
+    addLot,
+    duplicate,
+    remove,
+    setLevel,
+    copyLast,
+    addAway,
+    drop,
+  }
 }

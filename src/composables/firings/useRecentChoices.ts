@@ -23,11 +23,13 @@ export function useRecentChoices(user: string, network: string) {
     const next = { ...lists.value }
     const add = (list: string, values: readonly (string | null)[]): void => {
       const known = values.filter((value) => value !== null)
-      if (known.length > 0) next[list] = [...new Set([...known, ...(next[list] ?? [])])].slice(0, MOST)
+      if (known.length > 0)
+        next[list] = [...new Set([...known, ...(next[list] ?? [])])].slice(0, MOST)
     }
     add('kiln', [draft.kiln])
     add('kind', [draft.kind])
-    for (const lot of draft.lots) for (const factor of Object.keys(lot.levels)) add(factor, chosen(lot, factor))
+    for (const lot of draft.lots)
+      for (const factor of Object.keys(lot.levels)) add(factor, chosen(lot, factor))
     lists.value = next
     try {
       localStorage.setItem(key, JSON.stringify(next))

@@ -24,17 +24,33 @@ export function useReport({ network, firing: id }: Options) {
   const session = useSessionStore()
   const toast = useToast()
   // Asked anew each time: what is reported must rest on what is there now.
-  const query = useQuery(computed(() => ({ ...firingQuery(network(), id()), staleTime: 0, refetchOnWindowFocus: false })))
+  const query = useQuery(
+    computed(() => ({
+      ...firingQuery(network(), id()),
+      staleTime: 0,
+      refetchOnWindowFocus: false,
+    })),
+  )
   const drafting = useReportDraft()
   /** The firing that the draft rests on; a later look does not move it under the thumb. */
   const firing = shallowRef<FiringDetail | null>(null)
 
   const there = { name: 'firing', params: { network: network(), id: id() } }
-  const sending = useReportSending({ network, firing: id, draft: () => drafting.draft.value, keep: drafting.note, arrived })
+  const sending = useReportSending({
+    network,
+    firing: id,
+    draft: () => drafting.draft.value,
+    keep: drafting.note,
+    arrived,
+  })
 
-  watch(() => [query.data.value, query.isFetchedAfterMount.value] as const, ([now, fresh]) => {
-    if (now && fresh && firing.value?.uid !== now.uid) begin(now)
-  }, { immediate: true })
+  watch(
+    () => [query.data.value, query.isFetchedAfterMount.value] as const,
+    ([now, fresh]) => {
+      if (now && fresh && firing.value?.uid !== now.uid) begin(now)
+    },
+    { immediate: true },
+  )
 
   function begin(now: FiringDetail): void {
     firing.value = now
@@ -50,7 +66,8 @@ export function useReport({ network, firing: id }: Options) {
   async function arrived(now: FiringDetail): Promise<void> {
     drafting.arrived()
     queries.setQueryData(firingQuery(network(), id()).queryKey, now)
-    for (const key of ['firings', 'today', 'losses']) void queries.invalidateQueries({ queryKey: [key, network()] })
+    for (const key of ['firings', 'today', 'losses'])
+      void queries.invalidateQueries({ queryKey: [key, network()] })
     toast.show(`Reported: ${plural(now.pieces - now.turnedAway, 'piece')}, ${outcomeWords(now)}.`)
     await router.replace(there)
   }

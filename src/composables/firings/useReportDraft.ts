@@ -41,7 +41,8 @@ export function useReportDraft() {
   }
 
   function changeLot(uid: string, with_: (lot: LotDraft) => LotDraft): void {
-    if (draft.value) change({ lots: draft.value.lots.map((lot) => (lot.lot === uid ? with_(lot) : lot)) })
+    if (draft.value)
+      change({ lots: draft.value.lots.map((lot) => (lot.lot === uid ? with_(lot) : lot)) })
   }
 
   /** Back to before the last change; what belongs to sending stays. */
@@ -78,5 +79,18 @@ export function useReportDraft() {
     begun.value = false
   }
 
-  return { draft, kept, begun, begin, change, changeLot, note, undo, canUndo: computed(() => past.value.length > 0), putOnTop, startAgain, arrived }
+  return {
+    draft,
+    kept,
+    begun,
+    begin,
+    change,
+    changeLot,
+    note,
+    undo,
+    canUndo: computed(() => past.value.length > 0),
+    putOnTop,
+    startAgain,
+    arrived,
+  }
 }

@@ -3,7 +3,7 @@ import type { FailedOutcome } from '../../../server/shared/counts.js'
 import { FAILED_OUTCOMES } from '../../../server/shared/counts.js'
 import { faultRule } from '../../../server/shared/faults/rules.js'
 import type { LotDraft, Mark, ReportDraft } from './reportDraft'
-import { count, isCounted, markOf, sameMark, setCount, setMark, touch } from './reportDraft'
+import { count, markOf, sameMark, setCount, setMark, touch } from './reportDraft'
 
 interface Options {
   draft: () => ReportDraft | null
@@ -19,7 +19,11 @@ interface Sheet {
   first: boolean
 }
 
-const HAND: { fault: string | null; outcome: FailedOutcome; neighbour: boolean } = { fault: null, outcome: 'waster', neighbour: false }
+const HAND: { fault: string | null; outcome: FailedOutcome; neighbour: boolean } = {
+  fault: null,
+  outcome: 'waster',
+  neighbour: false,
+}
 
 const usualOutcome = (fault: string): FailedOutcome => {
   const usual = faultRule(fault)?.usualOutcome
@@ -29,13 +33,18 @@ const usualOutcome = (fault: string): FailedOutcome => {
 /** What is in hand (fault, outcome, neighbour), what a touch does with it, and the piece touched last. */
 export function useReportHand({ draft, changeLot }: Options) {
   const hand = reactive({ ...HAND })
-  const mark = computed(() => (hand.fault === null ? null : markOf(hand.fault, hand.outcome, hand.neighbour)))
+  const mark = computed(() =>
+    hand.fault === null ? null : markOf(hand.fault, hand.outcome, hand.neighbour),
+  )
   const touched = ref<{ lot: string; at: number } | null>(null)
   const sheet = ref<Sheet | null>(null)
 
   const lotOf = (uid: string): LotDraft | undefined => draft()?.lots.find((lot) => lot.lot === uid)
-  const markAt = (lot: string, at: number): Mark | null => lotOf(lot)?.entries.find((entry) => entry.at === at)?.mark ?? null
-  const lastMark = computed(() => (touched.value ? markAt(touched.value.lot, touched.value.at) : null))
+  const markAt = (lot: string, at: number): Mark | null =>
+    lotOf(lot)?.entries.find((entry) => entry.at === at)?.mark ?? null
+  const lastMark = computed(() =>
+    touched.value ? markAt(touched.value.lot, touched.value.at) : null,
+  )
 
   /** Another fault brings its usual outcome with it. */
   function take(fault: string | null): void {
@@ -54,8 +63,15 @@ export function useReportHand({ draft, changeLot }: Options) {
   /** One more of what is in hand, in a lot that is counted. */
   function addCount(lot: string): void {
     const inHand = mark.value
+    touched.value = null
     if (inHand) changeLot(lot, (now) => count(now, inHand, 1))
     else sheet.value = { lot, at: null, mark: null, first: true }
+  }
+
+  /** So many pieces with this mark, in a lot that is counted. */
+  function setPieces(lot: string, which: Mark, pieces: number): void {
+    touched.value = null
+    changeLot(lot, (now) => setCount(now, which, pieces))
   }
 
   function openLast(): void {
@@ -72,7 +88,8 @@ export function useReportHand({ draft, changeLot }: Options) {
     if (!open) return
     if (open.at === null) changeLot(open.lot, (lot) => recount(lot, open.mark, next))
     else changeLot(open.lot, (lot) => setMark(lot, open.at ?? 0, next))
-    if (open.first && next) Object.assign(hand, { fault: next.fault, outcome: next.outcome, neighbour: false })
+    if (open.first && next)
+      Object.assign(hand, { fault: next.fault, outcome: next.outcome, neighbour: false })
     sheet.value = { ...open, mark: next }
   }
 
@@ -92,5 +109,19 @@ export function useReportHand({ draft, changeLot }: Options) {
     if (hand.fault === next.fault) hand.neighbour = next.neighbour
   }
 
-  return { hand, mark, touched, lastMark, sheet, take, touchPiece, addCount, openLast, openCounted, setFromSheet, turnNeighbour, isCounted }
+  return {
+    hand,
+    mark,
+    touched,
+    lastMark,
+    sheet,
+    take,
+    touchPiece,
+    addCount,
+    setPieces,
+    openLast,
+    openCounted,
+    setFromSheet,
+    turnNeighbour,
+  }
 }

@@ -48,7 +48,9 @@ export function useReportSending({ network, firing, draft, keep, arrived }: Opti
     const deviceTime = now.deviceTime ?? new Date().toISOString()
     keep({ lossUids, deviceTime })
     const base = { base: now.base, deviceTime, report }
-    return now.kind === 'amend' ? { kind: 'amend' as const, reason: now.reason, ...base } : { kind: 'report' as const, ...base }
+    return now.kind === 'amend'
+      ? { kind: 'amend' as const, reason: now.reason, ...base }
+      : { kind: 'report' as const, ...base }
   }
 
   async function look(refusal: ApiError): Promise<void> {

@@ -5,17 +5,27 @@ import FaultStrip from '../../../src/components/faults/FaultStrip.vue'
 import { faultRule } from '../../../server/shared/faults/rules.js'
 import type { FiringKind } from '../../../server/shared/kinds.js'
 
-async function show(props: Partial<{ kind: FiringKind; stage: 'before' | 'after'; without: string[] }> = {}) {
-  const wrapper = mount(FaultPicker, { props: { kind: 'glaze', ...props }, attachTo: document.body })
+async function show(
+  props: Partial<{ kind: FiringKind; stage: 'before' | 'after'; without: string[] }> = {},
+) {
+  const wrapper = mount(FaultPicker, {
+    props: { kind: 'glaze', ...props },
+    attachTo: document.body,
+  })
   await vi.dynamicImportSettled()
   await flushPromises()
   return wrapper
 }
-const names = (wrapper: Awaited<ReturnType<typeof show>>): string[] => wrapper.findAll('[role="option"]').map((option) => option.text())
+const names = (wrapper: Awaited<ReturnType<typeof show>>): string[] =>
+  wrapper.findAll('[role="option"]').map((option) => option.text())
 
 describe('the fault tree to pick from', () => {
   it('begins with the honest coarse name, its finer ones below it', async () => {
-    expect(names(await show()).slice(0, 3)).toEqual(['Crack or break, not named', 'Crack in the base', 'S-crack'])
+    expect(names(await show()).slice(0, 3)).toEqual([
+      'Crack or break, not named',
+      'Crack in the base',
+      'S-crack',
+    ])
   })
 
   it('finds a fault by another name that the trade has for it', async () => {
@@ -34,7 +44,9 @@ describe('the fault tree to pick from', () => {
   })
 
   it('has no fault of the glaze at a bisque', async () => {
-    const options = (await show({ kind: 'bisque' })).findAll('[role="option"]').map((option) => option.attributes('id')?.replace(/^v-\d+-/, '') ?? '')
+    const options = (await show({ kind: 'bisque' }))
+      .findAll('[role="option"]')
+      .map((option) => option.attributes('id')?.replace(/^v-\d+-/, '') ?? '')
     expect(options.length).toBeGreaterThan(20)
     expect(options.filter((id) => faultRule(id)?.needsGlaze)).toEqual([])
   })
@@ -57,8 +69,10 @@ describe('the fault tree to pick from', () => {
 })
 
 describe('the fault in hand', () => {
-  const strip = (props: { kind: FiringKind; met: string[]; modelValue: string | null }) => mount(FaultStrip, { props })
-  const shown = (wrapper: ReturnType<typeof strip>): string[] => wrapper.findAll('label').map((label) => label.text())
+  const strip = (props: { kind: FiringKind; met: string[]; modelValue: string | null }) =>
+    mount(FaultStrip, { props })
+  const shown = (wrapper: ReturnType<typeof strip>): string[] =>
+    wrapper.findAll('label').map((label) => label.text())
 
   it('is one of the plain names, without those of the glaze at a bisque', () => {
     expect(shown(strip({ kind: 'glaze', met: [], modelValue: null }))).toContain('Crazing')

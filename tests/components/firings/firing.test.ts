@@ -8,12 +8,25 @@ import { makeFiring, makeLoss, makeLot, makeRevision, uidOf } from '../../suppor
 
 describe('the lots of a firing', () => {
   const mugs = makeLot({
-    uid: uidOf(1), pieces: 12, wasters: 2, levels: { form: [{ uid: uidOf(11), name: 'mugs' }], clay_body: [{ uid: uidOf(12), name: 'speckled buff' }] },
+    uid: uidOf(1),
+    pieces: 12,
+    wasters: 2,
+    levels: {
+      form: [{ uid: uidOf(11), name: 'mugs' }],
+      clay_body: [{ uid: uidOf(12), name: 'speckled buff' }],
+    },
     losses: [makeLoss({ pieces: 2, also: ['crazing'], neighbour: true })],
   })
 
   it('are named, counted and said in words', () => {
-    const text = mount(FiringLots, { props: { firing: makeFiring({ status: 'reported', lots: [mugs, makeLot({ uid: uidOf(2), isRest: true, pieces: 8 })] }) } }).text()
+    const text = mount(FiringLots, {
+      props: {
+        firing: makeFiring({
+          status: 'reported',
+          lots: [mugs, makeLot({ uid: uidOf(2), isRest: true, pieces: 8 })],
+        }),
+      },
+    }).text()
     expect(text).toContain('Mugs, speckled buff')
     expect(text).toContain('12 · 2 lost')
     expect(text).toContain('S-crack, also crazing: 2 wasters (a neighbour did it)')
@@ -21,18 +34,25 @@ describe('the lots of a firing', () => {
   })
 
   it('have their pieces in words for who cannot see the board', () => {
-    const board = mount(FiringLots, { props: { firing: makeFiring({ status: 'reported', lots: [mugs] }) } }).get('svg[role="img"]')
+    const board = mount(FiringLots, {
+      props: { firing: makeFiring({ status: 'reported', lots: [mugs] }) },
+    }).get('svg[role="img"]')
     expect(board.attributes('aria-label')).toBe('12 pieces: 10 first, 2 wasters')
   })
 
   it('name a maker only where one is given', () => {
-    const words = (maker: string | null): string => mount(FiringLots, { props: { firing: makeFiring({ lots: [{ ...mugs, maker }] }) } }).text()
+    const words = (maker: string | null): string =>
+      mount(FiringLots, { props: { firing: makeFiring({ lots: [{ ...mugs, maker }] }) } }).text()
     expect(words('Jo')).toContain('Jo')
     expect(words(null)).not.toContain('Maker')
   })
 
   it('leave out a rest without pieces', () => {
-    const text = mount(FiringLots, { props: { firing: makeFiring({ lots: [mugs, makeLot({ uid: uidOf(2), isRest: true, pieces: 0 })] }) } }).text()
+    const text = mount(FiringLots, {
+      props: {
+        firing: makeFiring({ lots: [mugs, makeLot({ uid: uidOf(2), isRest: true, pieces: 0 })] }),
+      },
+    }).text()
     expect(text).not.toContain('The rest')
   })
 })
@@ -41,10 +61,26 @@ describe('the versions of a firing', () => {
   it('stand newest first, with who, what it came to and why', () => {
     const revisions = [
       makeRevision({ uid: uidOf(1), number: 1, kind: 'pack' }),
-      makeRevision({ uid: uidOf(2), number: 2, kind: 'report', counts: { ...NO_COUNTS, pieces: 12 } }),
-      makeRevision({ uid: uidOf(3), number: 3, kind: 'amend', reason: 'Rang it again.', author: null, counts: { ...NO_COUNTS, pieces: 12, wasters: 1 } }),
+      makeRevision({
+        uid: uidOf(2),
+        number: 2,
+        kind: 'report',
+        counts: { ...NO_COUNTS, pieces: 12 },
+      }),
+      makeRevision({
+        uid: uidOf(3),
+        number: 3,
+        kind: 'amend',
+        reason: 'Rang it again.',
+        author: null,
+        counts: { ...NO_COUNTS, pieces: 12, wasters: 1 },
+      }),
     ]
-    const rows = mount(RevisionList, { props: { revisions, dateTime: (instant) => instant.slice(0, 10) } }).findAll('li').map((row) => row.text())
+    const rows = mount(RevisionList, {
+      props: { revisions, dateTime: (instant) => instant.slice(0, 10) },
+    })
+      .findAll('li')
+      .map((row) => row.text())
     expect(rows[0]).toMatch(/amended by the system.*1 lost.*“Rang it again\.”/)
     expect(rows[1]).toMatch(/reported by Mara.*all sound/)
     expect(rows[2]).toMatch(/packed by Mara.*12 pieces/)

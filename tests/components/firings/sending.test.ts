@@ -8,10 +8,17 @@ const firing = makeFiring({ status: 'packed', lots: [makeLot({ uid: uidOf(1), pi
 
 function sender() {
   const start = draftOf(firing, uidOf(50))
-  let draft: ReportDraft = { ...start, lots: start.lots.map((lot) => touch(lot, 1, markOf('s-crack', 'waster'))) }
+  let draft: ReportDraft = {
+    ...start,
+    lots: start.lots.map((lot) => touch(lot, 1, markOf('s-crack', 'waster'))),
+  }
   const arrived = vi.fn()
   const sending = useReportSending({
-    network: () => 'quay', firing: () => firing.uid, draft: () => draft, keep: (changes) => (draft = { ...draft, ...changes }), arrived,
+    network: () => 'quay',
+    firing: () => firing.uid,
+    draft: () => draft,
+    keep: (changes) => (draft = { ...draft, ...changes }),
+    arrived,
   })
   return { ...sending, arrived }
 }
@@ -26,8 +33,10 @@ function answers(...list: (Response | Error)[]) {
   vi.stubGlobal('fetch', fetch)
   return fetch
 }
-const json = (status: number, body: unknown) => new Response(JSON.stringify(body), { status, headers: { 'content-type': 'application/json' } })
-const refusal = (status: number, code: string) => json(status, { error: { code, message: 'no', requestId: 'r' } })
+const json = (status: number, body: unknown) =>
+  new Response(JSON.stringify(body), { status, headers: { 'content-type': 'application/json' } })
+const refusal = (status: number, code: string) =>
+  json(status, { error: { code, message: 'no', requestId: 'r' } })
 
 afterEach(() => vi.unstubAllGlobals())
 
