@@ -3,6 +3,9 @@ import { Stop } from './say.mjs'
 /** Every kind of test, in the order of the summary. */
 export const KINDS = ['lint', 'types', 'unit', 'components', 'api', 'jobs', 'sizes', 'e2e']
 
+/** The kinds that Vitest runs; `e2e` is Playwright's. */
+export const VITEST_KINDS = ['unit', 'components', 'api', 'jobs']
+
 /**
  * `test [--only KIND[,KIND]] [--keep FOLDER] [-- ARGS]`; ARGS go to Vitest or Playwright.
  *
@@ -26,9 +29,15 @@ export function readTestArguments(args) {
   if (strange !== undefined) {
     throw new Stop(`There is no kind of test "${strange}"; there are ${KINDS.join(', ')}.`)
   }
-  return {
-    kinds: chosen.length > 0 ? KINDS.filter((kind) => chosen.includes(kind)) : KINDS,
-    keep,
-    extra,
+  const kinds = chosen.length > 0 ? KINDS.filter((kind) => chosen.includes(kind)) : KINDS
+  if (
+    extra.length > 0 &&
+    kinds.includes('e2e') &&
+    kinds.some((kind) => VITEST_KINDS.includes(kind))
+  ) {
+    throw new Stop(
+      'ARGS after -- are for Vitest or for Playwright: choose kinds of one with --only.',
+    )
   }
+  return { kinds, keep, extra }
 }

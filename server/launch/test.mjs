@@ -1,7 +1,7 @@
 import { chmodSync, existsSync, mkdirSync, mkdtempSync, readdirSync, rmSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { basename, join, resolve } from 'node:path'
-import { KINDS, readTestArguments } from './arguments.mjs'
+import { KINDS, readTestArguments, VITEST_KINDS } from './arguments.mjs'
 import { buildStale } from './build.mjs'
 import { lint, typeProjects, types } from './checks.mjs'
 import { migrateSource, toolArgs } from './cli.mjs'
@@ -22,7 +22,6 @@ import { readSettings } from './settings.mjs'
  * `npm test` and `npm run bench`: a database, ports and a folder of their own, all gone at the end.
  */
 
-const VITEST_KINDS = ['unit', 'components', 'api', 'jobs']
 const DATABASE_KINDS = ['api', 'jobs', 'e2e']
 const BUILT_KINDS = ['sizes', 'e2e']
 /** What the product reads from the environment must not reach its tests. */

@@ -80,6 +80,10 @@ describe('the arguments of a test run', () => {
     expect(extra).toEqual(['tests/unit/a.test.ts', '-t', 'x'])
   })
 
+  it('are not passed on to two programs at once', () => {
+    expect(() => readTestArguments(['--', '-t', 'x'])).toThrow('choose kinds of one')
+  })
+
   it('name a kind that does not exist', () => {
     expect(() => readTestArguments(['--only', 'units'])).toThrow('no kind of test "units"')
   })
