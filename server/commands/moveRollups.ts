@@ -2,8 +2,8 @@ import type { Transaction } from 'sequelize'
 import type { Deps } from '../deps.js'
 import { addToRollups } from '../queries/lossRollups.js'
 import { fixedLevels, rollupFirings } from '../queries/rollupFirings.js'
-import { addFiring } from '../shared/lossRollup.js'
-import type { Rollup } from '../shared/lossRollup.js'
+import { Rollup } from '../shared/lossRollup.js'
+import { addFiring } from '../shared/rollUpFiring.js'
 
 /**
  * Moves the roll-ups by new − old around a change of one firing, in the change's own transaction.
@@ -20,7 +20,7 @@ export async function moveRollups(
   transaction: Transaction,
 ): Promise<void> {
   const fixed = await fixedLevels(networkId, transaction)
-  const rollup: Rollup = new Map()
+  const rollup = new Rollup()
   const put = async (id: number, sign: 1 | -1): Promise<void> => {
     const [firing] = await rollupFirings(networkId, { firingId: id }, fixed, transaction)
     if (firing) addFiring(rollup, firing, sign)

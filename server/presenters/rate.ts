@@ -2,7 +2,7 @@ import type { Rate } from '../contract/common.js'
 import type { LossSummary } from '../contract/losses.js'
 import type { FiringKind } from '../shared/kinds.js'
 import { faultRule } from '../shared/faults/index.js'
-import { measureSums } from '../shared/lossRollup.js'
+import { measureSums } from '../shared/lossRollupRates.js'
 import { clusteredRateFromSums } from '../statistics/index.js'
 import type { ClusterSums } from '../statistics/index.js'
 

@@ -1,7 +1,8 @@
 import { QueryTypes } from 'sequelize'
 import type { Sequelize } from 'sequelize'
 import { Kiln, Studio } from '../models/index.js'
-import { SUM_COLUMNS, familiesOf } from '../shared/lossRollup.js'
+import { SUM_COLUMNS } from '../shared/lossRollup.js'
+import { familiesOf } from '../shared/lossRollupRates.js'
 import type { FiringKind } from '../shared/kinds.js'
 
 export interface KilnOfLosses {

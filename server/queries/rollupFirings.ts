@@ -1,4 +1,4 @@
-import { Op } from 'sequelize'
+import { Op, QueryTypes } from 'sequelize'
 import type { Transaction, WhereOptions } from 'sequelize'
 import { Firing, FiringLevel, Level, Loss, Lot, LotLevel } from '../models/index.js'
 import { LOT_FACTORS, openingTemperatureBand } from '../shared/factors.js'
@@ -86,21 +86,20 @@ function grouped<R, V>(rows: readonly R[], keyOf: (row: R) => number, valueOf: (
   return map
 }
 
+const LOT_ATTRIBUTES = [
+  'id', 'firingId', 'pieces', 'turnedAway', 'seconds', 'refires', 'wasters', 'undecided', 'notLookedAt', 'refireCount',
+  ...LOT_FACTORS.flatMap(({ column }) => column ?? []),
+]
+
 async function partsOf(networkId: number, firingIds: number[], fixed: FixedLevels, transaction?: Transaction) {
   const of = { where: { networkId, firingId: firingIds }, raw: true, transaction } as const
-  const lots = await Lot.findAll({ ...of, order: [['id', 'ASC']] })
+  const lots = await Lot.findAll({ ...of, attributes: LOT_ATTRIBUTES, order: [['id', 'ASC']] })
   const [firingLevels, losses, lotLevels] = await Promise.all([
     FiringLevel.findAll({ ...of, attributes: ['firingId', 'factor', 'levelId'] }),
     Loss.findAll({ ...of, attributes: ['lotId', 'fault', 'alsoFaults', 'outcome', 'pieces'] }),
-    LotLevel.findAll({
-      where: { networkId, lotId: lots.map(({ id }) => id) },
-      attributes: ['lotId', 'factor', 'levelId'],
-      raw: true,
-      transaction,
-    }),
+    levelsOfLots(networkId, lots.map(({ id }) => id), transaction),
   ])
   const levelOf = ({ factor, levelId }: LevelOfFactor): LevelOfFactor => ({ factor, levelId })
-  const levels = grouped(lotLevels, ({ lotId }) => lotId, levelOf)
   const lossesOf = grouped<Loss, RollupLoss>(
     losses,
     ({ lotId }) => lotId,
@@ -111,9 +110,29 @@ async function partsOf(networkId: number, firingIds: number[], fixed: FixedLevel
     lots: grouped(
       lots,
       ({ firingId }) => firingId,
-      (lot) => rollupLot(lot, levels.get(lot.id) ?? [], lossesOf.get(lot.id) ?? [], fixed),
+      (lot) => rollupLot(lot, lotLevels.get(lot.id) ?? [], lossesOf.get(lot.id) ?? [], fixed),
     ),
   }
+}
+
+/** Further levels by lot, a line a lot: a network has half a dozen times as many levels as lots. */
+async function levelsOfLots(
+  networkId: number,
+  lotIds: readonly number[],
+  transaction?: Transaction,
+): Promise<Map<number, LevelOfFactor[]>> {
+  if (lotIds.length === 0) return new Map()
+  const rows = await LotLevel.sequelize!.query<{ lotId: number; levels: string }>(
+    `SELECT lot_id AS lotId, GROUP_CONCAT(factor, ':', level_id ORDER BY id) AS levels FROM lot_levels
+    WHERE network_id = :networkId AND lot_id IN (:lotIds) GROUP BY lot_id`,
+    { replacements: { networkId, lotIds }, type: QueryTypes.SELECT, transaction },
+  )
+  return new Map(rows.map(({ lotId, levels }) => [lotId, levels.split(',').map(levelOfText)]))
+}
+
+function levelOfText(text: string): LevelOfFactor {
+  const [factor = '', levelId] = text.split(':')
+  return { factor, levelId: Number(levelId) }
 }
 
 function rollupLot(lot: Lot, further: readonly LevelOfFactor[], losses: RollupLoss[], fixed: FixedLevels): RollupLot {

@@ -1,7 +1,7 @@
 import { QueryTypes } from 'sequelize'
 import type { Sequelize } from 'sequelize'
 import type { FiringKind } from '../shared/kinds.js'
-import type { MeasureSums } from '../shared/lossRollup.js'
+import type { MeasureSums } from '../shared/lossRollupRates.js'
 import type { FiringWhere } from './firingWhere.js'
 
 /** Packed and not reported, in the studios given. */
