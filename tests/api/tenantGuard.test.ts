@@ -38,6 +38,8 @@ const MODELS = [
   Studio,
   Study,
 ]
+// A model knows its table once it is defined on a database.
+await testDatabase()
 /** Tables of a network's rows: those with the key that composite foreign keys point to. */
 const TENANT_TABLES = MODELS.map((model) => [model.name, model.getTableName() as string] as const)
 const named = MODELS.map((model) => [model.name, model as ModelStatic<Model>] as const)
