@@ -1,10 +1,12 @@
+import { v7 } from 'uuid'
 import { beforeAll, describe, expect, it } from 'vitest'
 import { fixedClock } from '../../server/clock.js'
 import type { Today } from '../../server/contract/today.js'
-import type { Network, User } from '../../server/models/index.js'
+import { Finding, Study } from '../../server/models/index.js'
+import type { Level, Network, User } from '../../server/models/index.js'
 import { createTestApp, fill, PATHS, signedIn } from '../support/api.js'
 import type { TestApp } from '../support/api.js'
-import { makeKiln, makeNetwork, makePerson, makeStudio } from '../support/factories.js'
+import { makeKiln, makeLevel, makeNetwork, makePerson, makeStudio } from '../support/factories.js'
 import { makeFiring } from '../support/firings.js'
 
 let test: TestApp
@@ -114,4 +116,35 @@ describe('today', () => {
       rates: [],
     })
   })
+
+  it('shows the five surest of the leading findings', async () => {
+    const { network, technician } = await setting()
+    const level = await makeLevel({ network })
+    const study = await makeStudy(network)
+    for (const qValue of [0.05, 0.001, 0.02, 0.002, 0.09, 0.003]) await makeFinding(study, level, qValue)
+    for (const person of [technician, await makePerson({ network, roles: [{ role: 'education-lead' }] })]) {
+      const { findings } = await todayOf(network, person)
+      expect(findings?.study?.uid).toBe(study.uid)
+      expect(findings?.rows.map((each) => each.qValue)).toEqual([0.001, 0.002, 0.003, 0.02, 0.05])
+    }
+  })
 })
+
+/** A study of the whole network. */
+function makeStudy(network: Network): Promise<Study> {
+  const at = new Date('2026-03-04T02:00:00Z')
+  return Study.create({
+    networkId: network.id, uid: v7(), windowFrom: '2025-03-05', windowTo: '2026-03-04', firings: 40, lots: 200,
+    pieces: 3000, comparisons: 100, findings: 6, parameters: {}, watermark: 0, seed: 1, codeVersion: 'test',
+    startedAt: at, finishedAt: at,
+  })
+}
+
+function makeFinding(study: Study, level: Level, qValue: number): Promise<Finding> {
+  return Finding.create({
+    networkId: study.networkId, uid: v7(), studyId: study.id, identity: `s-crack ${qValue}`, fault: 's-crack',
+    factor: 'clay_body', levelId: level.id, comparison: 'within-firing', ratio: 2, lowerLimit: 1.2, upperLimit: 3,
+    pValue: qValue / 10, qValue, exposedUnits: 100, exposedEvents: 20, unexposedUnits: 100, unexposedEvents: 10,
+    mixedStrata: 12, informativeStrata: 10, recordedShare: 0.9, levels: [], firstSeenOn: '2026-03-04',
+  })
+}
