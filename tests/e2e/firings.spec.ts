@@ -57,6 +57,20 @@ test.describe('packing', () => {
     await expect(page.getByText('It waits for you on Today', { exact: false })).toBeVisible()
   })
 
+  test('lots are doubled and taken away by keys, and come back with Undo', async ({ page }) => {
+    await open(page, TECHNICIAN, `${AT}/firings/new`)
+    await page.getByRole('spinbutton', { name: 'Pieces in all' }).fill('30')
+    await page.keyboard.press('Alt+Enter')
+    await expect(page.getByRole('spinbutton', { name: 'Pieces', exact: true })).toBeFocused()
+    await page.keyboard.type('9')
+    await page.keyboard.press('Control+d')
+    await expect(page.getByText('12 of 30 pieces, in no lot')).toBeVisible()
+    await page.keyboard.press('Alt+Delete')
+    await expect(page.getByText('21 of 30 pieces, in no lot')).toBeVisible()
+    await page.getByRole('button', { name: 'Undo' }).click()
+    await expect(page.getByText('12 of 30 pieces, in no lot')).toBeVisible()
+  })
+
   test('what is missing is said beside its field, and the lots cannot hold more than the load', async ({
     page,
   }) => {
@@ -175,7 +189,7 @@ test.describe('reporting', () => {
     )
   })
 
-  test('without a connection everything is kept, through a reload, and sent once when tried again', async ({
+  test('without a connection everything is kept, and arrives once when tried again', async ({
     page,
     context,
   }) => {
@@ -200,6 +214,23 @@ test.describe('reporting', () => {
     await page.getByRole('button', { name: 'Try again' }).click()
     await expect(page.getByRole('heading', { level: 1 })).toContainText('1 of 20 pieces was lost')
     expect((await firingOf(page, TECHNICIAN.network, firing.uid)).revision).toBe(2)
+  })
+
+  test('a report whose answer was lost is known to have arrived after a reload', async ({
+    page,
+  }) => {
+    const firing = await waitingFiring(page)
+    await page.goto(report(firing))
+    await page.getByRole('button', { name: 'All sound', exact: true }).click()
+    await page.route('**/revisions/*', async (route) => {
+      await route.fetch()
+      await route.abort()
+    })
+    await page.getByRole('button', { name: 'Report 20 pieces' }).click()
+    await expect(page.getByText('The server cannot be reached', { exact: false })).toBeVisible()
+    await page.reload()
+    await expect(page.getByText('This report had arrived already.')).toBeVisible()
+    await expect(page.getByRole('heading', { level: 1 })).toContainText('None of 20 pieces')
   })
 
   test('marks that were not sent are there again after a reload', async ({ page }) => {

@@ -183,10 +183,10 @@ describe('levels to choose from', () => {
     levels: [level(1, null), level(2, uidOf(400)), level(3, uidOf(401)), level(4, null, true)],
   }
 
-  it('are the common ones and the studio’s own, none archived', () => {
+  it('are the studio’s own, then the common ones, none archived', () => {
     expect(levelsFor(catalogue, 'clay_body', uidOf(400)).map(({ name }) => name)).toEqual([
-      'Clay 1',
       'Clay 2',
+      'Clay 1',
     ])
   })
 

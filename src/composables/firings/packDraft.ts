@@ -286,7 +286,7 @@ export function fitToStudio(
 export const isBegun = (draft: PackDraft): boolean =>
   draft.pieces !== null || draft.lots.length > 0 || draft.note !== '' || draft.turnedAway.length > 0
 
-/** Levels to choose from: the studio's own and the common ones, none that is archived. `now` keeps a level that is chosen already. */
+/** Levels to choose from: the studio's own, then the common ones, none that is archived. `now` keeps a level that is chosen already. */
 export function levelsFor(
   catalogue: Catalogue,
   factor: string,
@@ -295,9 +295,9 @@ export function levelsFor(
 ): CatalogueLevel[] {
   const open = (level: CatalogueLevel): boolean =>
     !level.archived && (level.studio === null || level.studio === studio)
-  return catalogue.levels.filter(
-    (level) => level.factor === factor && (open(level) || now.includes(level.uid)),
-  )
+  return catalogue.levels
+    .filter((level) => level.factor === factor && (open(level) || now.includes(level.uid)))
+    .sort((a, b) => Number(a.studio === null) - Number(b.studio === null))
 }
 
 /** The level of a class that says how long its makers have been at it, or null. */

@@ -60,30 +60,31 @@ export function usePack({ network, edit, quick }: Options) {
     })),
   )
 
-  const ready = ref(false)
+  /** What the shown draft is about: a load, a mere report, or one firing. Each has a draft of its own. */
+  const about = computed(() =>
+    edit() === null ? (quick() ? 'report-only' : 'pack') : `pack.${edit()}`,
+  )
+  const begun = ref<string | null>(null)
+  const ready = computed(() => begun.value === about.value)
+  const known = computed(
+    () =>
+      catalogue.data.value !== undefined &&
+      (edit() === null || (editing.data.value !== undefined && editing.isFetchedAfterMount.value)),
+  )
   watch(
-    [() => catalogue.data.value, () => editing.data.value, () => editing.isFetchedAfterMount.value],
+    [about, known],
     () => {
-      if (
-        ready.value ||
-        !catalogue.data.value ||
-        (edit() !== null && (!editing.data.value || !editing.isFetchedAfterMount.value))
+      if (ready.value || !known.value) return
+      begun.value = about.value
+      reason.value = ''
+      meanwhile.value = null
+      pack.begin(
+        draftKey(user, network(), about.value),
+        edit() === null ? null : (editing.data.value ?? null),
       )
-        return
-      ready.value = true
-      begin()
     },
     { immediate: true },
   )
-  // A load and a mere report are two drafts: one does not overwrite the other.
-  watch(quick, () => {
-    if (ready.value) begin()
-  })
-
-  function begin(): void {
-    const about = edit() === null ? (quick() ? 'report-only' : 'pack') : `pack.${edit()}`
-    pack.begin(draftKey(user, network(), about), editing.data.value ?? null)
-  }
 
   function send(): Promise<boolean> {
     form.values.deviceTime ??= new Date().toISOString()

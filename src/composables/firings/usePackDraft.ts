@@ -12,7 +12,6 @@ import {
   emptyLot,
   emptyPack,
   fitToStudio,
-  isBegun,
   packOf,
 } from './packDraft'
 
@@ -40,6 +39,9 @@ export function usePackDraft({
   /** What was filled in by us, and follows kiln and day until a person says otherwise. */
   const filled = { localDate: null as string | null, kilnNumber: null as number | null }
   let key = ''
+  /** The load as it was begun: nothing is kept until a person changes it. */
+  let start = ''
+  let corrected: FiringDetail | null = null
 
   const kilns = computed(() => {
     const all = catalogue()
@@ -58,6 +60,7 @@ export function usePackDraft({
   /** Takes up what was kept under this key, or begins anew (from a firing, to correct its load). */
   function begin(storageKey: string, firing: FiringDetail | null): void {
     key = storageKey
+    corrected = firing
     filled.localDate = null
     filled.kilnNumber = null
     const before = readDraft<PackDraft>(key, 1)
@@ -65,7 +68,8 @@ export function usePackDraft({
     const usable = before && (!firing || before.draft.base === firing.revision) ? before : null
     takenUp.value = usable?.at ?? null
     reset(usable?.draft ?? (firing ? packOf(firing, makeUid) : fresh()))
-    open.value = values.lots[0]?.uid ?? null
+    start = JSON.stringify(usable ? null : values)
+    open.value = null
   }
 
   function fresh(): PackDraft {
@@ -99,7 +103,8 @@ export function usePackDraft({
     takenUp.value = null
     filled.localDate = null
     filled.kilnNumber = null
-    reset(fresh())
+    reset(corrected ? packOf(corrected, makeUid) : fresh())
+    start = JSON.stringify(values)
     open.value = null
   }
 
@@ -127,7 +132,7 @@ export function usePackDraft({
   watch(
     values,
     () => {
-      if (key && (isBegun(values) || takenUp.value)) kept.value = keepDraft(key, values)
+      if (key && JSON.stringify(values) !== start) kept.value = keepDraft(key, values)
     },
     { deep: true },
   )

@@ -35,7 +35,7 @@ export function useReport({ network, firing: id }: Options) {
   /** The firing that the draft rests on; a later look does not move it under the thumb. */
   const firing = shallowRef<FiringDetail | null>(null)
 
-  const there = { name: 'firing', params: { network: network(), id: id() } }
+  const there = computed(() => ({ name: 'firing', params: { network: network(), id: id() } }))
   const sending = useReportSending({
     network,
     firing: id,
@@ -59,17 +59,20 @@ export function useReport({ network, firing: id }: Options) {
     if (draft && now.revisions.some((revision) => revision.uid === draft.revision)) {
       drafting.arrived()
       toast.show('This report had arrived already.')
-      void router.replace(there)
+      void router.replace(there.value)
     } else if (draft && draft.base !== now.revision) sending.meanwhile.value = now
   }
 
   async function arrived(now: FiringDetail): Promise<void> {
+    const amended = drafting.draft.value?.kind === 'amend'
     drafting.arrived()
     queries.setQueryData(firingQuery(network(), id()).queryKey, now)
     for (const key of ['firings', 'today', 'losses'])
       void queries.invalidateQueries({ queryKey: [key, network()] })
-    toast.show(`Reported: ${plural(now.pieces - now.turnedAway, 'piece')}, ${outcomeWords(now)}.`)
-    await router.replace(there)
+    toast.show(
+      `${amended ? 'Amended' : 'Reported'}: ${plural(now.pieces - now.turnedAway, 'piece')}, ${outcomeWords(now)}.`,
+    )
+    await router.replace(there.value)
   }
 
   /** After a look at what changed: mine goes on top of it, or is given up. */
