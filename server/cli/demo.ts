@@ -46,9 +46,19 @@ function read(args: string[]): Asked {
   if (hash === into) throw new Error('Say either --hash or --into-database.')
   if (!/^\d{1,9}$/.test(seed)) throw new Error(`--seed must be a whole number, not ${seed}.`)
   const day = new Date(`${ends}T00:00:00Z`)
-  const isDay = /^\d{4}-\d{2}-\d{2}$/.test(ends) && !Number.isNaN(day.getTime()) && day.toISOString().startsWith(ends)
+  const isDay =
+    /^\d{4}-\d{2}-\d{2}$/.test(ends) &&
+    !Number.isNaN(day.getTime()) &&
+    day.toISOString().startsWith(ends)
   if (!isDay) throw new Error(`--ends must be a day like 2026-10-15, not ${ends}.`)
-  return { into, withStudy: values['without-study'] !== true, ifEmpty: values['if-empty'], json: values.json === true, seed: Number(seed), ends }
+  return {
+    into,
+    withStudy: values['without-study'] !== true,
+    ifEmpty: values['if-empty'],
+    json: values.json === true,
+    seed: Number(seed),
+    ends,
+  }
 }
 
 async function write({ seed, ends, withStudy, ifEmpty, json }: Asked): Promise<void> {
@@ -58,11 +68,16 @@ async function write({ seed, ends, withStudy, ifEmpty, json }: Asked): Promise<v
   try {
     await migrate(sequelize)
     if (ifEmpty && (await Network.findOne())) {
-      console.log(json ? JSON.stringify({ seed, ends, networks: [] }) : 'There is a network already.')
+      console.log(
+        json ? JSON.stringify({ seed, ends, networks: [] }) : 'There is a network already.',
+      )
       return
     }
     const logger = createLogger(config.logLevel, 'stderr')
-    const networks = await makeDemo({ sequelize, clock: systemClock, logger, config }, { seed, ends, withStudy })
+    const networks = await makeDemo(
+      { sequelize, clock: systemClock, logger, config },
+      { seed, ends, withStudy },
+    )
     if (json) console.log(JSON.stringify({ seed, ends, networks }))
     else {
       for (const { name, firings, lots, pieces } of networks) {

@@ -27,7 +27,8 @@ const USAGE = `Usage: npm run import -- FILE --network SLUG [--create [--time-zo
 const MOST_BYTES = 64 * 1024 * 1024
 const MOST_SHOWN = 100
 
-const text = (max: number) => z.string().trim().min(1, 'is empty').max(max, `is longer than ${max} characters`)
+const text = (max: number) =>
+  z.string().trim().min(1, 'is empty').max(max, `is longer than ${max} characters`)
 
 /** By the names of the options. */
 const options = z.object({
@@ -56,8 +57,17 @@ function read(args: string[]): Asked {
     args,
     allowPositionals: true,
     options: {
-      network: given, create: flag, 'time-zone': { ...given, default: 'UTC' }, 'dry-run': flag, again: flag,
-      studio: given, kiln: given, kind: given, date: given, as: { ...given, multiple: true, default: [] }, json: flag,
+      network: given,
+      create: flag,
+      'time-zone': { ...given, default: 'UTC' },
+      'dry-run': flag,
+      again: flag,
+      studio: given,
+      kiln: given,
+      kind: given,
+      date: given,
+      as: { ...given, multiple: true, default: [] },
+      json: flag,
     },
   })
   const [path] = positionals
@@ -77,7 +87,9 @@ function read(args: string[]): Asked {
       network,
       ...(values.create && { create: { timeZone: zone } }),
       defaults: { studio, kiln, kind: kindOf, date },
-      as: Object.fromEntries(as.map((pair) => pair.split('=').map((part) => part.trim()) as [string, string])),
+      as: Object.fromEntries(
+        as.map((pair) => pair.split('=').map((part) => part.trim()) as [string, string]),
+      ),
       again: values.again,
       dryRun: values['dry-run'],
     },
@@ -86,7 +98,8 @@ function read(args: string[]): Asked {
 
 /** UTF-8; other encodings are refused rather than guessed. */
 function contentOf(path: string): string {
-  if (statSync(path).size > MOST_BYTES) throw new Error(`${path} is larger than 64 MB: import it in parts.`)
+  if (statSync(path).size > MOST_BYTES)
+    throw new Error(`${path} is larger than 64 MB: import it in parts.`)
   try {
     return new TextDecoder('utf-8', { fatal: true }).decode(readFileSync(path))
   } catch (error) {
@@ -102,21 +115,48 @@ function refuse({ message, problems }: ImportRefused, json: boolean): void {
   if (problems.length > MOST_SHOWN) console.error(`… and ${problems.length - MOST_SHOWN} more.`)
   const count = problems.length > 0 ? ` ${plural(problems.length, 'problem')}.` : ''
   console.error(`${message}${count} Nothing was written.`)
-  if (json) console.log(JSON.stringify({ error: message, problems: problems.slice(0, MOST_SHOWN), count: problems.length }))
+  if (json)
+    console.log(
+      JSON.stringify({
+        error: message,
+        problems: problems.slice(0, MOST_SHOWN),
+        count: problems.length,
+      }),
+    )
 }
 
-function print({ network, created, firings, lots, pieces, losses, names, notices, dryRun }: ImportSummary): void {
-  const counts = [plural(firings, 'firing'), plural(lots, 'lot'), plural(pieces, 'piece'), `${losses} lost`].join(', ')
-  console.log(`${dryRun ? 'Would import' : 'Imported'} ${counts} into ${network}${created ? ' (a new network)' : ''}.`)
+function print({
+  network,
+  created,
+  firings,
+  lots,
+  pieces,
+  losses,
+  names,
+  notices,
+  dryRun,
+}: ImportSummary): void {
+  const counts = [
+    plural(firings, 'firing'),
+    plural(lots, 'lot'),
+    plural(pieces, 'piece'),
+    `${losses} lost`,
+  ].join(', ')
+  console.log(
+    `${dryRun ? 'Would import' : 'Imported'} ${counts} into ${network}${created ? ' (a new network)' : ''}.`,
+  )
   const fresh: [string, string[]][] = [
     ['studio', names.studios],
     ['kiln', names.kilns.map(({ studio, name }) => `${name} (${studio})`)],
     ...[...new Set(names.levels.map(({ factor }) => factor))].map((factor): [string, string[]] => [
       (factorOf(factor)?.name ?? factor).toLowerCase(),
-      names.levels.filter((level) => level.factor === factor).map(({ name, studio }) => (studio === null ? name : `${name} (${studio})`)),
+      names.levels
+        .filter((level) => level.factor === factor)
+        .map(({ name, studio }) => (studio === null ? name : `${name} (${studio})`)),
     ]),
   ]
-  for (const [what, list] of fresh) if (list.length > 0) console.log(`New, ${what}: ${list.join(', ')}`)
+  for (const [what, list] of fresh)
+    if (list.length > 0) console.log(`New, ${what}: ${list.join(', ')}`)
   for (const notice of notices) console.log(notice)
 }
 
@@ -134,7 +174,12 @@ async function main(args: string[]): Promise<number> {
   try {
     await migrate(sequelize)
     const logger = createLogger(config.logLevel, 'stderr')
-    const summary = await importLots(asked.request, { sequelize, clock: systemClock, logger, config })
+    const summary = await importLots(asked.request, {
+      sequelize,
+      clock: systemClock,
+      logger,
+      config,
+    })
     if (asked.json) console.log(JSON.stringify(summary))
     else print(summary)
     return 0

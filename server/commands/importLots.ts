@@ -91,7 +91,11 @@ export async function importLots(request: ImportRequest, deps: Deps): Promise<Im
   }
 }
 
-async function importIn(request: ImportRequest, deps: Deps, transaction: Transaction): Promise<ImportSummary> {
+async function importIn(
+  request: ImportRequest,
+  deps: Deps,
+  transaction: Transaction,
+): Promise<ImportSummary> {
   const { scope, created } = await networkOf(request, deps, transaction)
   const hash = createHash('sha256').update(request.text).digest('hex')
   if (!request.again) await refuseTwice(scope, hash, transaction)
@@ -105,15 +109,25 @@ async function importIn(request: ImportRequest, deps: Deps, transaction: Transac
   const written: Written = { firings: 0, lots: 0, pieces: 0, losses: 0 }
   const at = deps.clock.now()
   for (let from = 0; from < plan.firings.length; from += AT_ONCE) {
-    const firings = plan.firings.slice(from, from + AT_ONCE).map((firing) => importedFiring(firing, uids, at))
+    const firings = plan.firings
+      .slice(from, from + AT_ONCE)
+      .map((firing) => importedFiring(firing, uids, at))
     const part = await writeFirings(scope, firings, keys, { ...deps, transaction })
-    for (const count of ['firings', 'lots', 'pieces', 'losses'] as const) written[count] += part[count]
+    for (const count of ['firings', 'lots', 'pieces', 'losses'] as const)
+      written[count] += part[count]
   }
   await rebuildRollups(scope, deps, transaction)
   const after = { file: request.file, hash, ...written }
   await recordAudit(scope, deps, { action: ACTION, subject: 'import', after }, transaction)
   const { network: slug } = request
-  return { network: slug, created, ...written, names, notices: plan.notices, dryRun: request.dryRun === true }
+  return {
+    network: slug,
+    created,
+    ...written,
+    names,
+    notices: plan.notices,
+    dryRun: request.dryRun === true,
+  }
 }
 
 async function networkOf(
@@ -130,9 +144,15 @@ async function networkOf(
   return { scope: made, created: true }
 }
 
-async function refuseTwice({ networkId }: Scope, hash: string, transaction: Transaction): Promise<void> {
+async function refuseTwice(
+  { networkId }: Scope,
+  hash: string,
+  transaction: Transaction,
+): Promise<void> {
   const events = await AuditEvent.findAll({ where: { networkId, action: ACTION }, transaction })
-  const before = events.find(({ afterState }) => (afterState as { hash?: string } | null)?.hash === hash)
+  const before = events.find(
+    ({ afterState }) => (afterState as { hash?: string } | null)?.hash === hash,
+  )
   if (!before) return
   const day = before.at.toISOString().slice(0, 10)
   throw new ImportRefused(`This sheet was imported on ${day} (--again takes it a second time).`)
@@ -145,6 +165,7 @@ function defaultsOf({ defaults = {} }: ImportRequest, scope: Scope, { clock }: D
 }
 
 function refuseProblems({ problems, firings }: ImportPlan): void {
-  if (problems.length > 0) throw new ImportRefused('The sheet cannot be imported as it is.', problems)
+  if (problems.length > 0)
+    throw new ImportRefused('The sheet cannot be imported as it is.', problems)
   if (firings.length === 0) throw new ImportRefused('The sheet has no lots.')
 }

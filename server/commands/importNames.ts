@@ -25,14 +25,20 @@ export interface ImportUids {
 const OWN_POSITION = 1000
 
 /** The network's studios and levels, archived ones too: an old sheet may well name them. */
-export async function knownNames({ networkId }: Scope, transaction: Transaction): Promise<KnownNames> {
+export async function knownNames(
+  { networkId }: Scope,
+  transaction: Transaction,
+): Promise<KnownNames> {
   const studios = await Studio.findAll({ where: { networkId }, transaction })
   const nameOf = new Map(studios.map(({ id, name }) => [id, name]))
   const levels = await Level.findAll({ where: { networkId, mergedIntoId: null }, transaction })
   return {
     studios: studios.map(({ name }) => name),
     levels: levels.map(({ uid, factor, studioId, code, name }) => ({
-      uid, factor, code: code ?? null, name,
+      uid,
+      factor,
+      code: code ?? null,
+      name,
       studio: studioId ? (nameOf.get(studioId) ?? null) : null,
     })),
   }
@@ -52,11 +58,16 @@ export async function makeNames(
   return {
     names: { studios: studios.made, kilns: kilns.made, levels: levels.made },
     keys: {
-      kilns: new Map([...kilns.rows.values()].map(({ uid, id, studioId }) => [uid, { id, studioId }])),
+      kilns: new Map(
+        [...kilns.rows.values()].map(({ uid, id, studioId }) => [uid, { id, studioId }]),
+      ),
       levels: new Map(all.map(({ uid, id }) => [uid, id])),
       classLevels: classLevels(all),
     },
-    uids: { kiln: (studio, kiln) => must(kilns.rows.get(kilnKey(studio, kiln))).uid, levels: levels.uids },
+    uids: {
+      kiln: (studio, kiln) => must(kilns.rows.get(kilnKey(studio, kiln))).uid,
+      levels: levels.uids,
+    },
   }
 }
 
@@ -71,7 +82,15 @@ async function makeStudios(scope: Scope, plan: ImportPlan, deps: Deps, transacti
   for (const { studio: name } of plan.firings) {
     if (ids.has(nameKey(name))) continue
     const { timeZone, currency, temperatureUnit, lengthUnit, weekStart } = network
-    const input = { name, timeZone, currency, temperatureUnit, lengthUnit, weekStart, appearance: 'name' as const }
+    const input = {
+      name,
+      timeZone,
+      currency,
+      temperatureUnit,
+      lengthUnit,
+      weekStart,
+      appearance: 'name' as const,
+    }
     const { id } = await createStudio(scope, input, deps, transaction)
     ids.set(nameKey(name), id)
     made.push(name)
@@ -83,10 +102,17 @@ function kilnKey(studio: string, kiln: string): string {
   return `${nameKey(studio)}\n${nameKey(kiln)}`
 }
 
-async function makeKilns({ networkId }: Scope, plan: ImportPlan, studios: StudioIds, transaction: Transaction) {
+async function makeKilns(
+  { networkId }: Scope,
+  plan: ImportPlan,
+  studios: StudioIds,
+  transaction: Transaction,
+) {
   const present = await Kiln.findAll({ where: { networkId }, transaction })
   const keyOf = new Map([...studios].map(([key, id]) => [id, key]))
-  const rows = new Map(present.map((kiln) => [`${keyOf.get(kiln.studioId) ?? ''}\n${nameKey(kiln.name)}`, kiln]))
+  const rows = new Map(
+    present.map((kiln) => [`${keyOf.get(kiln.studioId) ?? ''}\n${nameKey(kiln.name)}`, kiln]),
+  )
   const made: NewNames['kilns'] = []
   for (const { studio, kiln: name } of plan.firings) {
     const key = kilnKey(studio, name)
@@ -98,9 +124,16 @@ async function makeKilns({ networkId }: Scope, plan: ImportPlan, studios: Studio
   return { rows, made }
 }
 
-async function makeLevels({ networkId }: Scope, plan: ImportPlan, studios: StudioIds, transaction: Transaction) {
+async function makeLevels(
+  { networkId }: Scope,
+  plan: ImportPlan,
+  studios: StudioIds,
+  transaction: Transaction,
+) {
   const uids = plan.levels.map(({ uid }) => uid ?? v7())
-  const fresh = plan.levels.flatMap((level, place) => (level.uid === null ? [{ ...level, uid: must(uids[place]) }] : []))
+  const fresh = plan.levels.flatMap((level, place) =>
+    level.uid === null ? [{ ...level, uid: must(uids[place]) }] : [],
+  )
   await Level.bulkCreate(
     fresh.map(({ uid, factor, studio, name }) => ({
       networkId,

@@ -37,19 +37,26 @@ function packOf(firing: PlannedFiring, lots: readonly Lot[], uids: ImportUids): 
     kilnNumber: null,
     pieces: lots.reduce((sum, { row }) => sum + row.pieces, 0),
     about: false,
-    levels: Object.fromEntries(Object.entries(levels).map(([factor, place]) => [factor, uidOf(place)])),
+    levels: Object.fromEntries(
+      Object.entries(levels).map(([factor, place]) => [factor, uidOf(place)]),
+    ),
     note: firing.number === '' ? null : `Imported: ${firing.number}`,
     // A sheet describes every piece: the rest is there, and empty.
     rest: v7(),
     lots: lots.map((lot) => lotOf(lot, uidOf)),
     turnedAway: lots.flatMap(({ uid, row }) =>
       // Turned away is found cracked before the firing; a sheet says no more.
-      row.turnedAway === 0 ? [] : [{ uid: v7(), lot: uid, fault: 'crack-not-named', pieces: row.turnedAway }],
+      row.turnedAway === 0
+        ? []
+        : [{ uid: v7(), lot: uid, fault: 'crack-not-named', pieces: row.turnedAway }],
     ),
   }
 }
 
-function lotOf({ uid, row, levels }: Lot, uidOf: (place: number) => string): PackBody['lots'][number] {
+function lotOf(
+  { uid, row, levels }: Lot,
+  uidOf: (place: number) => string,
+): PackBody['lots'][number] {
   const named = Object.entries(levels).map(([factor, places]) => {
     const found = places.map(uidOf)
     return [factor, factorOf(factor)?.several ? found : found[0]]
@@ -65,7 +72,11 @@ function lotOf({ uid, row, levels }: Lot, uidOf: (place: number) => string): Pac
   }
 }
 
-function reportOf({ openingTemperatureC }: PlannedFiring, lots: readonly Lot[], rest: string): ReportBody {
+function reportOf(
+  { openingTemperatureC }: PlannedFiring,
+  lots: readonly Lot[],
+  rest: string,
+): ReportBody {
   const reported: ReportBody['lots'] = lots.map(({ uid, row }) => ({
     lot: uid,
     notLookedAt: row.notLookedAt,

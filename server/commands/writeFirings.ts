@@ -2,7 +2,16 @@ import type { CreationAttributes, Model, ModelStatic, Transaction } from 'sequel
 import type { Deps } from '../deps.js'
 import { Firing, FiringLevel, Loss, Lot, LotLevel, ReportRevision } from '../models/index.js'
 import type { Scope } from '../policies/scope.js'
-import { firingLevelRows, firingRow, lotLevelRows, lotRow, lossRow, revisionRow, stateOf } from './firingRows.js'
+import { insertRows } from '../queries/insertRows.js'
+import {
+  firingLevelRows,
+  firingRow,
+  lotLevelRows,
+  lotRow,
+  lossRow,
+  revisionRow,
+  stateOf,
+} from './firingRows.js'
 import type { Keys, WholeFiring } from './firingRows.js'
 
 export type { Keys, WholeFiring, WholeRevision } from './firingRows.js'
@@ -13,9 +22,6 @@ export interface Written {
   pieces: number
   losses: number
 }
-
-/** Rows a statement: 16 MB is the least that a statement may hold, and a payload has a few kB. */
-const BATCH = 1000
 
 /**
  * Writes whole firings with their history, in batches, inside the transaction given: what the app
@@ -32,37 +38,41 @@ export async function writeFirings(
   deps: Pick<Deps, 'sequelize'> & { transaction: Transaction },
 ): Promise<Written> {
   const { networkId } = scope
-  const { transaction } = deps
+  const insert = <M extends Model>(
+    model: ModelStatic<M>,
+    rows: CreationAttributes<M>[],
+  ): Promise<number[]> => insertRows(deps.sequelize, model, rows, deps.transaction)
   const states = firings.map((firing) => stateOf(firing))
-  const firingIds = await insert(Firing, states.map((state) => firingRow(networkId, state, keys)), transaction)
+  const firingIds = await insert(
+    Firing,
+    states.map((state) => firingRow(networkId, state, keys)),
+  )
   const lots = states.flatMap((state, i) =>
     state.load.lots.map((lot) => ({ lot, state, firingId: at(firingIds, i) })),
   )
   const lotIds = await insert(
     Lot,
     lots.map(({ lot, state, firingId }) => lotRow(networkId, firingId, lot, state, keys)),
-    transaction,
   )
   const losses = lots.flatMap(({ lot, state, firingId }, i) =>
     lot.losses.map((loss) => lossRow(networkId, firingId, at(lotIds, i), loss, state.last.at)),
   )
-  await insert(Loss, losses, transaction)
+  await insert(Loss, losses)
   await insert(
     LotLevel,
     lots.flatMap(({ lot }, i) => lotLevelRows(networkId, at(lotIds, i), lot, keys)),
-    transaction,
   )
   await insert(
     FiringLevel,
     states.flatMap((state, i) => firingLevelRows(networkId, at(firingIds, i), state, keys)),
-    transaction,
   )
   await insert(
     ReportRevision,
     states.flatMap(({ firing }, i) =>
-      firing.revisions.map((revision, index) => revisionRow(networkId, at(firingIds, i), revision, index + 1)),
+      firing.revisions.map((revision, index) =>
+        revisionRow(networkId, at(firingIds, i), revision, index + 1),
+      ),
     ),
-    transaction,
   )
   return {
     firings: states.length,
@@ -76,18 +86,4 @@ function at(ids: readonly number[], index: number): number {
   const id = ids[index]
   if (id === undefined) throw new Error('The database gave fewer ids than rows.')
   return id
-}
-
-/** Ids of the rows in their order: one INSERT of many rows takes consecutive ids. */
-async function insert<M extends Model>(
-  model: ModelStatic<M>,
-  rows: readonly CreationAttributes<M>[],
-  transaction: Transaction,
-): Promise<number[]> {
-  const ids: number[] = []
-  for (let from = 0; from < rows.length; from += BATCH) {
-    const made = await model.bulkCreate(rows.slice(from, from + BATCH), { transaction, validate: false, hooks: false })
-    for (const row of made) ids.push((row as unknown as { id: number }).id)
-  }
-  return ids
 }

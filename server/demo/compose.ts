@@ -15,18 +15,34 @@ export interface DemoKeys {
 /** A demo firing as the revisions that the app would have been sent. */
 export function composeFiring(firing: DemoFiring, keys: DemoKeys): WholeFiring {
   const revisions: WholeRevision[] = [
-    revision(firing.pack, keys, (deviceTime) => ({ kind: 'pack', base: 0, deviceTime, pack: packOf(firing, keys) })),
+    revision(firing.pack, keys, (deviceTime) => ({
+      kind: 'pack',
+      base: 0,
+      deviceTime,
+      pack: packOf(firing, keys),
+    })),
   ]
   const { report, amend } = firing
   if (report) {
     revisions.push(
-      revision(report, keys, (deviceTime) => ({ kind: 'report', base: 1, deviceTime, report: reportOf(report) })),
+      revision(report, keys, (deviceTime) => ({
+        kind: 'report',
+        base: 1,
+        deviceTime,
+        report: reportOf(report),
+      })),
     )
   }
   if (amend) {
     const { reason } = amend
     revisions.push(
-      revision(amend, keys, (deviceTime) => ({ kind: 'amend', base: 2, deviceTime, report: reportOf(amend), reason })),
+      revision(amend, keys, (deviceTime) => ({
+        kind: 'amend',
+        base: 2,
+        deviceTime,
+        report: reportOf(amend),
+        reason,
+      })),
     )
   }
   return { uid: firing.uid, revisions }
@@ -37,7 +53,12 @@ function revision(
   keys: DemoKeys,
   input: (deviceTime: string) => WholeRevision['input'],
 ): WholeRevision {
-  return { uid: sending.revision, authorId: keys.person(sending.by), at: new Date(sending.at), input: input(sending.at) }
+  return {
+    uid: sending.revision,
+    authorId: keys.person(sending.by),
+    at: new Date(sending.at),
+    input: input(sending.at),
+  }
 }
 
 function packOf(firing: DemoFiring, keys: DemoKeys): PackBody {
@@ -63,15 +84,28 @@ function lotOf({ levels, ...lot }: DemoLot, keys: DemoKeys): PackBody['lots'][nu
     factor,
     Array.isArray(key) ? key.map((each) => keys.level(factor, each)) : keys.level(factor, key),
   ])
-  return { ...lot, levels: Object.fromEntries(uids) as PackBody['lots'][number]['levels'], note: null }
+  return {
+    ...lot,
+    levels: Object.fromEntries(uids) as PackBody['lots'][number]['levels'],
+    note: null,
+  }
 }
 
-function reportOf({ openedAt, openingTemperatureC, wholeLoadFailed, lots, note }: DemoReport): ReportBody {
+function reportOf({
+  openedAt,
+  openingTemperatureC,
+  wholeLoadFailed,
+  lots,
+  note,
+}: DemoReport): ReportBody {
   return {
     openedAt,
     openingTemperatureC,
     wholeLoadFailed,
-    lots: lots.map(({ losses, ...lot }) => ({ ...lot, losses: losses.map((loss) => ({ ...loss, features: {} })) })),
+    lots: lots.map(({ losses, ...lot }) => ({
+      ...lot,
+      losses: losses.map((loss) => ({ ...loss, features: {} })),
+    })),
     note,
   }
 }

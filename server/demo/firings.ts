@@ -1,6 +1,7 @@
 import { daysBetween, instantOf } from './calendar.js'
 import type { KilnHabits, Scenery } from './kettleRing.js'
-import { LotMaker, recordedShare } from './loads.js'
+import { recordedShare } from './likelihoods.js'
+import { LotMaker } from './loads.js'
 import type { Load, TrueLot } from './loads.js'
 import { drawRisks, failures } from './outcomes.js'
 import type { Failure, FiringRisks } from './outcomes.js'
@@ -71,16 +72,31 @@ export class FiringMaker {
       kilnNumber: number !== null && random.chance(0.9) ? number : null,
       pieces: all.reduce((sum, { lot }) => sum + lot.pieces, 0),
       about,
-      cooling: random.chance(0.45) ? random.weighted([['closed', 6], ['held', 2], ['vents', 2]]) : null,
+      cooling: random.chance(0.45)
+        ? random.weighted([
+            ['closed', 6],
+            ['held', 2],
+            ['vents', 2],
+          ])
+        : null,
       note: random.chance(0.03) ? random.pick(NOTES) : null,
       rest: rest.lot.uid,
       lots: lots.map(({ lot }) => lot),
       turnedAway: all.flatMap(({ lot, failures: found }) =>
         found
           .filter(({ outcome }) => outcome === 'turned-away')
-          .map(({ fault, pieces: away }) => ({ uid: random.uid(packedAt), lot: lot.uid, fault, pieces: away })),
+          .map(({ fault, pieces: away }) => ({
+            uid: random.uid(packedAt),
+            lot: lot.uid,
+            fault,
+            pieces: away,
+          })),
       ),
-      pack: { revision: random.uid(packedAt), by: this.somebody(kiln.studio, random), at: iso(packedAt) },
+      pack: {
+        revision: random.uid(packedAt),
+        by: this.somebody(kiln.studio, random),
+        at: iso(packedAt),
+      },
       report: null,
       amend: null,
     }
@@ -93,7 +109,14 @@ export class FiringMaker {
   }
 
   private habits(kiln: DemoKiln): KilnHabits {
-    return this.scenery.habits[kiln.key] ?? { perWeek: 1, kinds: [['glaze', 1]], openedHot: 0, counter: null }
+    return (
+      this.scenery.habits[kiln.key] ?? {
+        perWeek: 1,
+        kinds: [['glaze', 1]],
+        openedHot: 0,
+        counter: null,
+      }
+    )
   }
 
   private count(kiln: DemoKiln, { counter }: KilnHabits): number | null {
@@ -104,8 +127,12 @@ export class FiringMaker {
   }
 
   private load(kiln: DemoKiln, kind: Load['kind'], random: Random): Load {
-    const choices = this.scenery.levels.filter(({ factor, attributes }) => factor === 'programme' && attributes.kind === kind)
-    const programme = random.weighted(choices.map((level) => [level, level.key === 'earthenware' ? 0.3 : 1]))
+    const choices = this.scenery.levels.filter(
+      ({ factor, attributes }) => factor === 'programme' && attributes.kind === kind,
+    )
+    const programme = random.weighted(
+      choices.map((level) => [level, level.key === 'earthenware' ? 0.3 : 1]),
+    )
     return { kiln, kind, programme: programme.key, cone: programme.attributes.cone ?? '6' }
   }
 
@@ -113,23 +140,36 @@ export class FiringMaker {
   private fill(load: Load, risks: FiringRisks, packedAt: number, random: Random): Made[] {
     const capacity = load.kiln.litres * PIECES_A_LITRE[load.kind]
     const pieces = Math.max(6, Math.round(capacity * (0.85 + 0.25 * random.next())))
-    const described = random.chance(0.12) ? pieces : Math.round(pieces * (0.55 + 0.35 * random.next()))
+    const described = random.chance(0.12)
+      ? pieces
+      : Math.round(pieces * (0.55 + 0.35 * random.next()))
     const wanted = Math.min(Math.round(9 + 2 * random.normal()), Math.floor(described / 2))
     const shares = Array.from({ length: Math.max(1, wanted) }, () => 0.25 + random.next())
     const sum = shares.reduce((a, b) => a + b, 0)
     const lots: Made[] = []
     for (const share of shares) {
       const truth = this.lots.lot(load, Math.max(1, Math.round((described * share) / sum)), random)
-      lots.push({ lot: this.written(truth, load, packedAt, random), failures: failures(truth, risks, this.effects, random) })
+      lots.push({
+        lot: this.written(truth, load, packedAt, random),
+        failures: failures(truth, risks, this.effects, random),
+      })
     }
     return lots
   }
 
   /** The pieces that nobody described; their practices are as mixed as everyone else's. */
-  private rest(load: Load, risks: FiringRisks, lots: readonly Made[], packedAt: number, random: Random): Made {
+  private rest(
+    load: Load,
+    risks: FiringRisks,
+    lots: readonly Made[],
+    packedAt: number,
+    random: Random,
+  ): Made {
     const capacity = load.kiln.litres * PIECES_A_LITRE[load.kind]
     const described = lots.reduce((sum, { lot }) => sum + lot.pieces, 0)
-    const pieces = random.chance(0.12) ? 0 : Math.max(0, Math.round(capacity * (0.9 + 0.2 * random.next())) - described)
+    const pieces = random.chance(0.12)
+      ? 0
+      : Math.max(0, Math.round(capacity * (0.9 + 0.2 * random.next())) - described)
     const found = new Map<string, Failure>()
     for (let left = pieces; left > 0; left -= 6) {
       const truth = this.lots.lot(load, Math.min(6, left), random)
@@ -140,7 +180,14 @@ export class FiringMaker {
         else found.set(key, failure)
       }
     }
-    const lot = { uid: random.uid(packedAt), pieces, levels: {}, glazeOverlap: null, refireCount: 0, maker: null }
+    const lot = {
+      uid: random.uid(packedAt),
+      pieces,
+      levels: {},
+      glazeOverlap: null,
+      refireCount: 0,
+      maker: null,
+    }
     return { lot, failures: [...found.values()] }
   }
 
@@ -148,7 +195,8 @@ export class FiringMaker {
   private written(truth: TrueLot, load: Load, packedAt: number, random: Random): DemoLot {
     const levels = Object.fromEntries(
       Object.entries(truth.levels).filter(
-        ([factor, value]) => value.length > 0 && random.chance(recordedShare(load.kiln.studio, factor)),
+        ([factor, value]) =>
+          value.length > 0 && random.chance(recordedShare(load.kiln.studio, factor)),
       ),
     )
     return {
@@ -187,11 +235,21 @@ export class FiringMaker {
     const sending = { revision: random.uid(reportedAt), by, at: iso(reportedAt) }
     const temperature = random.chance(0.7) ? at.temperature : null
     if (this.tripsPower(firing, ago)) {
-      firing.report = { ...sending, ...wholeLoadLost(all, reportedAt, random), openedAt: iso(openedAt), openingTemperatureC: temperature }
+      firing.report = {
+        ...sending,
+        ...wholeLoadLost(all, reportedAt, random),
+        openedAt: iso(openedAt),
+        openingTemperatureC: temperature,
+      }
       return
     }
     const report = reported(all, { reportedAt, recent: ago < 12, kind: firing.kind }, random)
-    firing.report = { ...sending, ...report, openedAt: random.chance(0.8) ? iso(openedAt) : null, openingTemperatureC: temperature }
+    firing.report = {
+      ...sending,
+      ...report,
+      openedAt: random.chance(0.8) ? iso(openedAt) : null,
+      openingTemperatureC: temperature,
+    }
     const amendedAt = reportedAt + random.whole(1, 60) * HOUR * 60_000
     if (random.chance(0.035) && amendedAt < this.end()) amended(firing, { amendedAt, by }, random)
   }

@@ -28,7 +28,12 @@ export function generateDemo({ seed, ends }: DemoInput): DemoContent {
   const random = makeRandom(seed)
   return {
     networks: [
-      network(KETTLE_RING, DEMO_TRUTH.effects, { days: KETTLE_RING_DAYS, ends }, random.part('kettle-ring')),
+      network(
+        KETTLE_RING,
+        DEMO_TRUTH.effects,
+        { days: KETTLE_RING_DAYS, ends },
+        random.part('kettle-ring'),
+      ),
       network(SALT_PAIR, [], { days: SALT_PAIR_DAYS, ends }, random.part('salt-pair')),
     ],
   }
@@ -52,16 +57,25 @@ function network(
       .filter((firing): firing is DemoFiring => firing !== null),
   )
   leaveWork(firings, scenery, span.ends)
-  firings.sort((a, b) => (a.pack.at < b.pack.at ? -1 : a.pack.at > b.pack.at ? 1 : a.uid < b.uid ? -1 : 1))
+  firings.sort((a, b) =>
+    a.pack.at < b.pack.at ? -1 : a.pack.at > b.pack.at ? 1 : a.uid < b.uid ? -1 : 1,
+  )
   return { ...scenery, firings }
 }
 
 /** Loads of the last two days wait for their report, and in every studio its newest one, so that there is work to do. */
-function leaveWork(firings: readonly DemoFiring[], { studios, kilns }: Pick<Scenery, 'studios' | 'kilns'>, ends: string): void {
+function leaveWork(
+  firings: readonly DemoFiring[],
+  { studios, kilns }: Pick<Scenery, 'studios' | 'kilns'>,
+  ends: string,
+): void {
   for (const { key } of studios) {
     const own = new Set(kilns.filter(({ studio }) => studio === key).map((kiln) => kiln.key))
     const ofStudio = firings.filter(({ kiln }) => own.has(kiln))
-    const newest = ofStudio.reduce<DemoFiring | null>((a, b) => (a && a.pack.at >= b.pack.at ? a : b), null)
+    const newest = ofStudio.reduce<DemoFiring | null>(
+      (a, b) => (a && a.pack.at >= b.pack.at ? a : b),
+      null,
+    )
     for (const firing of ofStudio) {
       if (firing !== newest && daysBetween(firing.localDate, ends) > 2) continue
       firing.report = null
@@ -71,7 +85,12 @@ function leaveWork(firings: readonly DemoFiring[], { studios, kilns }: Pick<Scen
 }
 
 /** Days on which a kiln is packed: a kiln needs two days for a load, and nobody fires in the holidays. */
-function loadsOf(kiln: DemoKiln, perWeek: number, span: { days: number; ends: string }, random: Random): string[] {
+function loadsOf(
+  kiln: DemoKiln,
+  perWeek: number,
+  span: { days: number; ends: string },
+  random: Random,
+): string[] {
   const days: string[] = []
   let day = addDays(span.ends, -span.days + random.whole(0, 3))
   while (daysBetween(day, span.ends) >= 1) {
@@ -81,4 +100,3 @@ function loadsOf(kiln: DemoKiln, perWeek: number, span: { days: number; ends: st
   }
   return days
 }
-

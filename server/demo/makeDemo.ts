@@ -9,7 +9,7 @@ import { writeFirings } from '../commands/writeFirings.js'
 import type { Keys, Written } from '../commands/writeFirings.js'
 import { inTransaction } from '../database/inTransaction.js'
 import type { Deps } from '../deps.js'
-import { Kiln, Level, Membership, Network, Studio, User } from '../models/index.js'
+import { Network, User } from '../models/index.js'
 import type { Scope } from '../policies/scope.js'
 import { refreshStatistics } from '../queries/refreshStatistics.js'
 import { systemScope } from '../queries/scopeFor.js'
@@ -19,9 +19,17 @@ import type { DemoKeys } from './compose.js'
 import { generateDemo } from './generateDemo.js'
 import type { DemoInput } from './generateDemo.js'
 import type { DemoContent, DemoNetwork } from './types.js'
+import {
+  classLevels,
+  must,
+  writeKilns,
+  writeLevels,
+  writeMemberships,
+  writeStudios,
+} from './writeNames.js'
 
-/** As lists of a studio are kept: after the fixed levels, among themselves by name. */
-const OWN_POSITION = 1000
+/** Firings in one piece of work: few rows are held at once, which spares the collector a second or two. */
+const AT_ONCE = 100
 
 export interface MadeNetwork extends Written {
   slug: string
@@ -79,7 +87,9 @@ async function writePeople(
   transaction: Transaction,
 ): Promise<Map<string, number>> {
   const listed: { email: string; name: string; label: string | null }[] = [...DEMO_ACCOUNTS]
-  const others = content.networks.flatMap(({ people }) => people.filter(({ label }) => label === null))
+  const others = content.networks.flatMap(({ people }) =>
+    people.filter(({ label }) => label === null),
+  )
   const users = await User.bulkCreate(
     [...listed, ...others].map(({ email, name, label }) => ({
       uid: v7(),
@@ -112,7 +122,12 @@ async function writeNetwork(
   const kilns = await writeKilns(network, networkId, studios, transaction)
   const levels = await writeLevels(network, networkId, studios, transaction)
   const scope: Scope = {
-    network: row, networkId, userId: null, roles: [], studioIds: [...studios.values()], requestId: null,
+    network: row,
+    networkId,
+    userId: null,
+    roles: [],
+    studioIds: [...studios.values()],
+    requestId: null,
   }
   const demoKeys: DemoKeys = {
     kiln: (key) => must(kilns.get(key)).uid,
@@ -124,90 +139,14 @@ async function writeNetwork(
     levels: new Map([...levels.values()].map(({ uid, id }) => [uid, id])),
     classLevels: classLevels(network, levels),
   }
-  const firings = network.firings.map((firing) => composeFiring(firing, demoKeys))
-  return { slug, name, ...(await writeFirings(scope, firings, keys, { ...deps, transaction })) }
-}
-
-async function writeStudios(
-  { studios }: DemoNetwork,
-  networkId: number,
-  transaction: Transaction,
-): Promise<Map<string, number>> {
-  const rows = await Studio.bulkCreate(
-    studios.map(({ key, ...studio }) => ({ ...studio, slug: key, networkId, uid: v7() })),
-    { transaction },
-  )
-  return new Map(rows.map((studio) => [studio.slug, studio.id]))
-}
-
-async function writeMemberships(
-  { people: members }: DemoNetwork,
-  networkId: number,
-  { people, studios }: { people: ReadonlyMap<string, number>; studios: ReadonlyMap<string, number> },
-  transaction: Transaction,
-): Promise<void> {
-  await Membership.bulkCreate(
-    members.flatMap(({ email, roles }) =>
-      roles.map(({ role, studio }) => ({
-        networkId,
-        userId: must(people.get(email)),
-        role,
-        studioId: studio === null ? null : must(studios.get(studio)),
-      })),
-    ),
-    { transaction },
-  )
-}
-
-async function writeKilns(
-  { kilns }: DemoNetwork,
-  networkId: number,
-  studios: ReadonlyMap<string, number>,
-  transaction: Transaction,
-): Promise<Map<string, Kiln>> {
-  const rows = await Kiln.bulkCreate(
-    kilns.map(({ key: _, studio, ...kiln }) => ({ ...kiln, networkId, studioId: must(studios.get(studio)), uid: v7() })),
-    { transaction },
-  )
-  return new Map(kilns.map(({ key }, index) => [key, must(rows[index])]))
-}
-
-/** Levels by `factor/key`: the fixed ones that the network was made with, by code, and the demo's own. */
-async function writeLevels(
-  { levels }: DemoNetwork,
-  networkId: number,
-  studios: ReadonlyMap<string, number>,
-  transaction: Transaction,
-): Promise<Map<string, Level>> {
-  const fixed = await Level.findAll({ where: { networkId }, transaction })
-  const own = await Level.bulkCreate(
-    levels.map(({ key: _, studio, ...level }) => ({
-      ...level,
-      networkId,
-      position: OWN_POSITION,
-      studioId: studio === null ? null : must(studios.get(studio)),
-      uid: v7(),
-    })),
-    { transaction },
-  )
-  return new Map([
-    ...fixed.map((level) => [`${level.factor}/${level.code}`, level] as const),
-    ...levels.map(({ factor, key }, index) => [`${factor}/${key}`, must(own[index])] as const),
-  ])
-}
-
-/** A class stands for its class level where a lot names the class alone. */
-function classLevels({ levels }: DemoNetwork, rows: ReadonlyMap<string, Level>): Map<string, number> {
-  return new Map(
-    levels.flatMap(({ factor, key, attributes }) => {
-      if (factor !== 'class' || !attributes.classLevel) return []
-      const level = must(rows.get(`class_level/${attributes.classLevel}`))
-      return [[must(rows.get(`class/${key}`)).uid, level.id] as const]
-    }),
-  )
-}
-
-function must<T>(value: T | undefined): T {
-  if (value === undefined) throw new Error('The demo names something that it does not have.')
-  return value
+  const written: Written = { firings: 0, lots: 0, pieces: 0, losses: 0 }
+  for (let from = 0; from < network.firings.length; from += AT_ONCE) {
+    const firings = network.firings
+      .slice(from, from + AT_ONCE)
+      .map((firing) => composeFiring(firing, demoKeys))
+    const part = await writeFirings(scope, firings, keys, { ...deps, transaction })
+    for (const count of ['firings', 'lots', 'pieces', 'losses'] as const)
+      written[count] += part[count]
+  }
+  return { slug, name, ...written }
 }

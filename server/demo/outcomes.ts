@@ -40,7 +40,8 @@ function effectsOn(fault: string, effects: readonly PlantedEffect[]): readonly P
   if (!byFault) {
     byFault = new Map()
     for (const effect of effects) {
-      for (const id of withDescendants(effect.fault)) byFault.set(id, [...(byFault.get(id) ?? []), effect])
+      for (const id of withDescendants(effect.fault))
+        byFault.set(id, [...(byFault.get(id) ?? []), effect])
     }
     effectsBelow.set(effects, byFault)
   }
@@ -89,7 +90,10 @@ export function failures(
   for (const base of BASE_RISKS) {
     const own = firing.own.get(base.fault)
     if (own === undefined || !atRisk(base, lot, kind)) continue
-    const ratio = effectsOn(base.fault, effects).reduce((all, each) => all * (holds(each, lot, firing) ? each.ratio : 1), 1)
+    const ratio = effectsOn(base.fault, effects).reduce(
+      (all, each) => all * (holds(each, lot, firing) ? each.ratio : 1),
+      1,
+    )
     const risk = own * ratio * workRatio(base.fault, lot)
     risks.push([base.fault, risk])
     sum += risk
@@ -108,9 +112,21 @@ export function failures(
 }
 
 const OUTCOMES: Readonly<Record<string, readonly (readonly [FailedOutcome, number])[]>> = {
-  waster: [['waster', 90], ['second', 7], ['refire', 3]],
-  second: [['second', 78], ['waster', 12], ['refire', 10]],
-  refire: [['refire', 72], ['waster', 14], ['second', 14]],
+  waster: [
+    ['waster', 90],
+    ['second', 7],
+    ['refire', 3],
+  ],
+  second: [
+    ['second', 78],
+    ['waster', 12],
+    ['refire', 10],
+  ],
+  refire: [
+    ['refire', 72],
+    ['waster', 14],
+    ['second', 14],
+  ],
 }
 const PLAIN = new Set(FAULT_TREE.filter((node) => !node.leaf).map((node) => node.id))
 
@@ -118,12 +134,19 @@ const PLAIN = new Set(FAULT_TREE.filter((node) => !node.leaf).map((node) => node
 function described(fault: string, kind: FiringKind, random: Random): Failure {
   const rule = faultRule(fault)
   const parent = faultNode(fault)?.parent
-  const named = parent && PLAIN.has(parent) && parent !== 'body-fault' && random.chance(0.22) ? parent : fault
+  const named =
+    parent && PLAIN.has(parent) && parent !== 'body-fault' && random.chance(0.22) ? parent : fault
   const green = kind === 'bisque' || kind === 'single'
-  const seenEarly = rule?.seenBeforeFiring === true && (rule.arises === 'drying' || rule.arises === 'making')
-  if (green && seenEarly && random.chance(0.14)) return { fault: named, outcome: 'turned-away', pieces: 1 }
+  const seenEarly =
+    rule?.seenBeforeFiring === true && (rule.arises === 'drying' || rule.arises === 'making')
+  if (green && seenEarly && random.chance(0.14))
+    return { fault: named, outcome: 'turned-away', pieces: 1 }
   const usual = OUTCOMES[rule?.usualOutcome ?? 'second'] ?? [['second', 1]]
   // Bisque is not glazed yet: what is wrong with it is mended or thrown away, there are no seconds to sell.
   const outcome = random.weighted(usual)
-  return { fault: named, outcome: kind === 'bisque' && outcome === 'refire' ? 'waster' : outcome, pieces: 1 }
+  return {
+    fault: named,
+    outcome: kind === 'bisque' && outcome === 'refire' ? 'waster' : outcome,
+    pieces: 1,
+  }
 }

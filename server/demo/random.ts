@@ -86,13 +86,17 @@ function gamma(random: Random, shape: number): number {
   for (;;) {
     const x = random.normal()
     const v = Math.pow(1 + c * x, 3)
-    if (v > 0 && Math.log(1 - random.next()) < 0.5 * x * x + d - d * v + d * Math.log(v)) return d * v
+    if (v > 0 && Math.log(1 - random.next()) < 0.5 * x * x + d - d * v + d * Math.log(v))
+      return d * v
   }
 }
 
 function uuid7(at: number, next: () => number): string {
   const time = Math.floor(at).toString(16).padStart(12, '0')
-  const bits = (length: number) => Math.floor(next() * 16 ** length).toString(16).padStart(length, '0')
+  const bits = (length: number) =>
+    Math.floor(next() * 16 ** length)
+      .toString(16)
+      .padStart(length, '0')
   const variant = (8 + Math.floor(next() * 4)).toString(16)
   return `${time.slice(0, 8)}-${time.slice(8)}-7${bits(3)}-${variant}${bits(3)}-${bits(6)}${bits(6)}`
 }

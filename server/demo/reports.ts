@@ -23,7 +23,11 @@ export function neighbours(all: readonly Made[], kind: FiringKind, random: Rando
     const other = random.pick(all)
     const pieces = Math.min(random.whole(1, 2), room(other))
     if (other === source || pieces < 1) continue
-    const hit: Failure = { fault: culprit, outcome: random.chance(0.7) ? 'waster' : 'second', pieces }
+    const hit: Failure = {
+      fault: culprit,
+      outcome: random.chance(0.7) ? 'waster' : 'second',
+      pieces,
+    }
     NEIGHBOUR.add(hit)
     other.failures.push(hit)
   }
@@ -39,7 +43,8 @@ export function reported(
   const collected = about.kind !== 'bisque' && random.chance(0.12)
   const lots = all.map((made): DemoLotReport => {
     const free = room(made)
-    const notLookedAt = collected && free > 1 && random.chance(0.3) ? random.whole(1, Math.min(4, free)) : 0
+    const notLookedAt =
+      collected && free > 1 && random.chance(0.3) ? random.whole(1, Math.min(4, free)) : 0
     const losses = made.failures.flatMap((failure) => {
       if (failure.outcome === 'turned-away') return []
       const undecided = about.recent && failure.pieces === 1 && random.chance(0.08)
@@ -57,7 +62,11 @@ export function reported(
     })
     return { lot: made.lot.uid, notLookedAt, losses }
   })
-  return { wholeLoadFailed: null, lots, note: random.chance(0.02) ? random.pick(REPORT_NOTES) : null }
+  return {
+    wholeLoadFailed: null,
+    lots,
+    note: random.chance(0.02) ? random.pick(REPORT_NOTES) : null,
+  }
 }
 
 function also(fault: string, kind: FiringKind, random: Random): string[] {
@@ -69,20 +78,42 @@ function also(fault: string, kind: FiringKind, random: Random): string[] {
 /** The power went: every piece that was not turned away has to go in again. */
 export function wholeLoadLost(all: readonly Made[], reportedAt: number, random: Random): Report {
   const lots = all.map(({ lot, failures }): DemoLotReport => {
-    const away = failures.filter(({ outcome }) => outcome === 'turned-away').reduce((sum, { pieces }) => sum + pieces, 0)
+    const away = failures
+      .filter(({ outcome }) => outcome === 'turned-away')
+      .reduce((sum, { pieces }) => sum + pieces, 0)
     const pieces = lot.pieces - away
-    const loss = { fault: 'underfired-dry-glaze', also: [], outcome: 'refire' as const, pieces, neighbour: false }
-    return { lot: lot.uid, notLookedAt: 0, losses: pieces > 0 ? [{ uid: random.uid(reportedAt), ...loss }] : [] }
+    const loss = {
+      fault: 'underfired-dry-glaze',
+      also: [],
+      outcome: 'refire' as const,
+      pieces,
+      neighbour: false,
+    }
+    return {
+      lot: lot.uid,
+      notLookedAt: 0,
+      losses: pieces > 0 ? [{ uid: random.uid(reportedAt), ...loss }] : [],
+    }
   })
-  return { wholeLoadFailed: 'power', lots, note: 'The power failed at 1040 °C; everything goes in again.' }
+  return {
+    wholeLoadFailed: 'power',
+    lots,
+    note: 'The power failed at 1040 °C; everything goes in again.',
+  }
 }
 
 /** A second look changes the report: pieces found later, or a fault that was taken for another. */
-export function amended(firing: DemoFiring, at: { amendedAt: number; by: string }, random: Random): void {
+export function amended(
+  firing: DemoFiring,
+  at: { amendedAt: number; by: string },
+  random: Random,
+): void {
   const { report } = firing
   const failed = report?.lots.find(({ losses }) => losses.length > 0)
   if (!report || !failed) return
-  const lots = report.lots.map((lot) => (lot === failed ? { ...lot, losses: lot.losses.slice(1) } : lot))
+  const lots = report.lots.map((lot) =>
+    lot === failed ? { ...lot, losses: lot.losses.slice(1) } : lot,
+  )
   const final: DemoReport = { ...report }
   firing.amend = {
     ...final,

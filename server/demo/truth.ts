@@ -29,7 +29,11 @@ export const DEMO_TRUTH = {
   ] satisfies PlantedEffect[] as readonly PlantedEffect[],
   /** Without an effect of their own, and still raised in a crude count. */
   confounded: [
-    { fault: 'cooling-dunt', when: { glaze: 'iron-red' }, because: 'used almost only in the kiln North' },
+    {
+      fault: 'cooling-dunt',
+      when: { glaze: 'iron-red' },
+      because: 'used almost only in the kiln North',
+    },
   ],
   /** Without an effect, crude or not: what a study should leave alone. */
   nulls: [
@@ -41,7 +45,12 @@ export const DEMO_TRUTH = {
 } as const
 
 /** How the work itself changes a risk: what is not named is as everywhere. Common practice, no source. */
-export const WORK_RISKS: Readonly<Record<string, { factor: 'forming' | 'form'; ratios: Readonly<Record<string, number>>; others: number }>> = {
+export const WORK_RISKS: Readonly<
+  Record<
+    string,
+    { factor: 'forming' | 'form'; ratios: Readonly<Record<string, number>>; others: number }
+  >
+> = {
   's-crack': { factor: 'forming', ratios: { thrown: 1 }, others: 0.4 },
   'seam-crack': { factor: 'forming', ratios: { slab: 1, coil: 0.8 }, others: 0.3 },
   'slab-base-straight-crack': { factor: 'forming', ratios: { slab: 1, pressed: 0.6 }, others: 0 },
@@ -57,7 +66,13 @@ export interface BaseRisk {
   rho: number
 }
 
-const risk = (fault: string, rho: number, bisque: number, glaze: number, others: Partial<Record<FiringKind, number>> = {}): BaseRisk => ({
+const risk = (
+  fault: string,
+  rho: number,
+  bisque: number,
+  glaze: number,
+  others: Partial<Record<FiringKind, number>> = {},
+): BaseRisk => ({
   fault,
   rho,
   kinds: { bisque, glaze, single: bisque * 0.8 + glaze * 0.9, raku: bisque * 0.4, ...others },

@@ -40,10 +40,16 @@ export class LevelNames {
   }
 
   /** Place in `wanted` of a factor's level, null for one that cannot be (said to `complain`). */
-  place(factor: string, name: string, studio: string, complain: (message: string) => void): number | null {
+  place(
+    factor: string,
+    name: string,
+    studio: string,
+    complain: (message: string) => void,
+  ): number | null {
     const own = this.known.get(key(factor, studio, name))
     const found = own ?? this.known.get(key(factor, null, name))
-    if (found) return this.placeOf({ uid: found.uid, factor, studio: found.studio, name: found.name })
+    if (found)
+      return this.placeOf({ uid: found.uid, factor, studio: found.studio, name: found.name })
     const entry = factorOf(factor)
     if (!entry?.catalogue) {
       complain(`“${name}” is none of: ${(entry?.fixed ?? []).map((each) => each.name).join(', ')}.`)
@@ -53,7 +59,12 @@ export class LevelNames {
       complain(`At most ${LONGEST} characters.`)
       return null
     }
-    return this.placeOf({ uid: null, factor, studio: OF_A_STUDIO.has(factor) ? studio : null, name })
+    return this.placeOf({
+      uid: null,
+      factor,
+      studio: OF_A_STUDIO.has(factor) ? studio : null,
+      name,
+    })
   }
 
   private placeOf(level: WantedLevel): number {

@@ -61,7 +61,11 @@ const FIRST_DAY = '2000-01-01'
 const LONGEST = { studio: 120, kiln: 80 } as const
 
 /** Sorts the rows of a sheet into firings and says what is missing or wrong. Pure. */
-export function planImport(sheet: LotSheet, known: KnownNames, defaults: ImportDefaults): ImportPlan {
+export function planImport(
+  sheet: LotSheet,
+  known: KnownNames,
+  defaults: ImportDefaults,
+): ImportPlan {
   const names = new LevelNames(known.levels)
   const problems = [...sheet.problems]
   const firings = new Map<string, PlannedFiring>()
@@ -87,33 +91,54 @@ type Complain = (column: string, message: string) => void
 
 /** The header of a field's column, or null for a sheet without it. */
 function headerOf(sheet: LotSheet, field: SheetField): string | null {
-  return sheet.columns.find((column) => column.is === 'field' && column.field === field)?.header ?? null
+  return (
+    sheet.columns.find((column) => column.is === 'field' && column.field === field)?.header ?? null
+  )
 }
 
-function checkRow(row: LotSheetRow, sheet: LotSheet, { today }: ImportDefaults, complain: Complain): void {
+function checkRow(
+  row: LotSheetRow,
+  sheet: LotSheet,
+  { today }: ImportDefaults,
+  complain: Complain,
+): void {
   const header = (field: SheetField): string => headerOf(sheet, field) ?? field
   const given = (field: SheetField): boolean => headerOf(sheet, field) !== null
   if (row.pieces < 1) complain(header('pieces'), 'A lot has at least one piece.')
   if (row.pieces > MOST_PIECES) complain(header('pieces'), `At most ${MOST_PIECES} pieces a lot.`)
-  if (row.refireCount > MOST_REFIRES) complain(header('refireCount'), `At most ${MOST_REFIRES} refires.`)
-  if (row.cone !== null && coneOf(row.cone) === null) complain(header('cone'), `“${row.cone}” is no cone: write it as 06 or 6.`)
-  if (given('kind') && row.kind === null) complain(header('kind'), 'Which kind of firing? Bisque, glaze, once-fired, lustre or raku.')
-  if (given('date') && row.date === null) complain(header('date'), 'Which day? Write it as 2025-03-31.')
+  if (row.refireCount > MOST_REFIRES)
+    complain(header('refireCount'), `At most ${MOST_REFIRES} refires.`)
+  if (row.cone !== null && coneOf(row.cone) === null)
+    complain(header('cone'), `“${row.cone}” is no cone: write it as 06 or 6.`)
+  if (given('kind') && row.kind === null)
+    complain(header('kind'), 'Which kind of firing? Bisque, glaze, once-fired, lustre or raku.')
+  if (given('date') && row.date === null)
+    complain(header('date'), 'Which day? Write it as 2025-03-31.')
   if (row.date !== null && row.date > today) complain(header('date'), 'This day is still to come.')
-  if (row.date !== null && row.date < FIRST_DAY) complain(header('date'), 'Before the year 2000: check the year.')
+  if (row.date !== null && row.date < FIRST_DAY)
+    complain(header('date'), 'Before the year 2000: check the year.')
   for (const field of ['studio', 'kiln'] as const) {
     if (given(field) && row[field] === null) complain(header(field), `Which ${field}?`)
-    if ((row[field]?.length ?? 0) > LONGEST[field]) complain(header(field), `At most ${LONGEST[field]} characters.`)
+    if ((row[field]?.length ?? 0) > LONGEST[field])
+      complain(header(field), `At most ${LONGEST[field]} characters.`)
   }
 }
 
 /** Cones as a sheet may write them: "cone 6", "Δ06", "^6". */
 function coneOf(text: string): PlannedFiring['cone'] {
-  const bare = text.toLowerCase().replace(/^(cone|c|△|Δ|δ|\^)\s*/u, '').trim()
+  const bare = text
+    .toLowerCase()
+    .replace(/^(cone|c|△|Δ|δ|\^)\s*/u, '')
+    .trim()
   return CONES.find((cone) => cone === bare) ?? null
 }
 
-function firingOf(row: LotSheetRow, sheet: LotSheet, known: KnownNames, defaults: ImportDefaults): PlannedFiring {
+function firingOf(
+  row: LotSheetRow,
+  sheet: LotSheet,
+  known: KnownNames,
+  defaults: ImportDefaults,
+): PlannedFiring {
   const studio = row.studio ?? defaults.studio
   return {
     number: row.firing,
@@ -129,15 +154,26 @@ function firingOf(row: LotSheetRow, sheet: LotSheet, known: KnownNames, defaults
 }
 
 /** Adds a row to its firing; what the firing has only once must be the same on every row. */
-function addLot(firing: PlannedFiring, row: LotSheetRow, names: LevelNames, complain: Complain): void {
+function addLot(
+  firing: PlannedFiring,
+  row: LotSheetRow,
+  names: LevelNames,
+  complain: Complain,
+): void {
   if (firing.lots.length === MOST_LOTS) complain('', `A firing has at most ${MOST_LOTS} lots.`)
   const before = firing.lots.reduce((sum, lot) => sum + lot.row.pieces, 0)
-  if (before <= MOST_PIECES && before + row.pieces > MOST_PIECES) complain('', `A firing has at most ${MOST_PIECES} pieces.`)
+  if (before <= MOST_PIECES && before + row.pieces > MOST_PIECES)
+    complain('', `A firing has at most ${MOST_PIECES} pieces.`)
   const cone = row.cone === null ? null : coneOf(row.cone)
-  if (cone !== null && firing.cone !== null && cone !== firing.cone) complain('cone', differs(row, firing.cone))
+  if (cone !== null && firing.cone !== null && cone !== firing.cone)
+    complain('cone', differs(row, firing.cone))
   firing.cone ??= cone
   const temperature = row.openingTemperatureC
-  if (temperature !== null && firing.openingTemperatureC !== null && temperature !== firing.openingTemperatureC)
+  if (
+    temperature !== null &&
+    firing.openingTemperatureC !== null &&
+    temperature !== firing.openingTemperatureC
+  )
     complain('opening_temperature', differs(row, `${firing.openingTemperatureC} °C`))
   firing.openingTemperatureC ??= temperature
   for (const [factor, name] of Object.entries(row.firingLevels)) {
@@ -146,7 +182,8 @@ function addLot(firing: PlannedFiring, row: LotSheetRow, names: LevelNames, comp
     const place = names.place(factor, name, firing.studio, (message) => complain(factor, message))
     if (place === null) continue
     const held = firing.levels[factor]
-    if (held !== undefined && held !== place) complain(factor, differs(row, names.wanted[held]?.name ?? ''))
+    if (held !== undefined && held !== place)
+      complain(factor, differs(row, names.wanted[held]?.name ?? ''))
     firing.levels[factor] = held ?? place
   }
   const lot: PlannedLot = { row, levels: {} }
@@ -168,7 +205,10 @@ function differs(row: LotSheetRow, before: string): string {
 function notices(sheet: LotSheet, defaults: ImportDefaults): string[] {
   const said: string[] = []
   const assume = (field: 'studio' | 'kiln' | 'kind' | 'date', what: string): void => {
-    if (headerOf(sheet, field) === null) said.push(`No column gives ${what}: ${defaults[field]} is taken for all (--${field} changes it).`)
+    if (headerOf(sheet, field) === null)
+      said.push(
+        `No column gives ${what}: ${defaults[field]} is taken for all (--${field} changes it).`,
+      )
   }
   if (sheet.columns.length === 0) return said
   assume('studio', 'the studio')
@@ -176,8 +216,13 @@ function notices(sheet: LotSheet, defaults: ImportDefaults): string[] {
   assume('kind', 'the kind of firing')
   assume('date', 'the day')
   const left = sheet.columns.filter(({ is }) => is === 'unknown').map(({ header }) => `“${header}”`)
-  if (left.length > 0) said.push(`Left out, since the column is nothing we know: ${left.join(', ')} (--as COLUMN=NAME says what it is).`)
-  const bands = sheet.rows.some((row) => row.openingTemperatureC === null && row.firingLevels.opening_temperature)
+  if (left.length > 0)
+    said.push(
+      `Left out, since the column is nothing we know: ${left.join(', ')} (--as COLUMN=NAME says what it is).`,
+    )
+  const bands = sheet.rows.some(
+    (row) => row.openingTemperatureC === null && row.firingLevels.opening_temperature,
+  )
   if (bands) said.push('Opening temperatures given as a band are left out: a report holds degrees.')
   return said
 }

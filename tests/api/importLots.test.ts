@@ -9,7 +9,16 @@ import { runStudy } from '../../server/commands/runStudy.js'
 import { saveRevision } from '../../server/commands/saveRevision.js'
 import { revisionInput } from '../../server/contract/firings.js'
 import {
-  AuditEvent, Finding, Firing, Kiln, Level, Loss, Lot, Network, ReportRevision, Studio,
+  AuditEvent,
+  Finding,
+  Firing,
+  Kiln,
+  Level,
+  Loss,
+  Lot,
+  Network,
+  ReportRevision,
+  Studio,
 } from '../../server/models/index.js'
 import { systemScope } from '../../server/queries/scopeFor.js'
 import { testDeps } from '../support/deps.js'
@@ -37,17 +46,38 @@ describe('importLots', () => {
   it('writes firings as reported, with their lots, counts and losses', async () => {
     const { summary, networkId } = await importText(`\ufeff${SHEET}`)
     expect(summary).toMatchObject({ created: true, firings: 2, lots: 3, pieces: 22, losses: 4 })
-    const firing = await Firing.findOne({ where: { networkId, kind: 'glaze' }, rejectOnEmpty: true })
+    const firing = await Firing.findOne({
+      where: { networkId, kind: 'glaze' },
+      rejectOnEmpty: true,
+    })
     expect(firing).toMatchObject({
-      status: 'reported', pieces: 15, turnedAway: 1, wasters: 3, notLookedAt: 2, about: false,
-      cone: '6', openingTemperatureC: 95, localDate: '2026-02-28', packedAt: null, revision: 1,
+      status: 'reported',
+      pieces: 15,
+      turnedAway: 1,
+      wasters: 3,
+      notLookedAt: 2,
+      about: false,
+      cone: '6',
+      openingTemperatureC: 95,
+      localDate: '2026-02-28',
+      packedAt: null,
+      revision: 1,
     })
     expect(firing.reportedAt?.toISOString()).toBe('2026-03-04T12:00:00.000Z')
-    const lots = await Lot.findAll({ where: { networkId, firingId: firing.id }, order: ['position'] })
-    expect(lots.map(({ isRest, pieces, wasters }) => [isRest, pieces, wasters])).toEqual([[false, 10, 1], [false, 5, 2], [true, 0, 0]])
+    const lots = await Lot.findAll({
+      where: { networkId, firingId: firing.id },
+      order: ['position'],
+    })
+    expect(lots.map(({ isRest, pieces, wasters }) => [isRest, pieces, wasters])).toEqual([
+      [false, 10, 1],
+      [false, 5, 2],
+      [true, 0, 0],
+    ])
     const losses = await Loss.findAll({ where: { networkId, firingId: firing.id }, order: ['id'] })
     expect(losses.map(({ fault, outcome, pieces }) => [fault, outcome, pieces])).toEqual([
-      ['crack-not-named', 'turned-away', 1], ['s-crack', 'waster', 1], ['dunt', 'waster', 2],
+      ['crack-not-named', 'turned-away', 1],
+      ['s-crack', 'waster', 1],
+      ['dunt', 'waster', 2],
     ])
   })
 
@@ -55,9 +85,14 @@ describe('importLots', () => {
     const { summary, networkId } = await importText(SHEET)
     expect(summary.names).toEqual({
       studios: ['Quay'],
-      kilns: [{ studio: 'Quay', name: 'North' }, { studio: 'Quay', name: 'South' }],
+      kilns: [
+        { studio: 'Quay', name: 'North' },
+        { studio: 'Quay', name: 'South' },
+      ],
       levels: ['Buff', 'Celadon', 'Fog', 'Porcelain'].map((name) => ({
-        factor: name === 'Buff' || name === 'Porcelain' ? 'clay_body' : 'glaze', studio: null, name,
+        factor: name === 'Buff' || name === 'Porcelain' ? 'clay_body' : 'glaze',
+        studio: null,
+        name,
       })),
     })
     expect(await Level.count({ where: { networkId, code: null } })).toBe(4)
@@ -75,20 +110,39 @@ describe('importLots', () => {
 
   it('leaves a history that can be amended like any other', async () => {
     const { networkId, scope } = await importText(SHEET)
-    const firing = await Firing.findOne({ where: { networkId, kind: 'bisque' }, rejectOnEmpty: true })
+    const firing = await Firing.findOne({
+      where: { networkId, kind: 'bisque' },
+      rejectOnEmpty: true,
+    })
     const [first] = await ReportRevision.findAll({ where: { networkId, firingId: firing.id } })
     const sent = revisionInput.parse(first?.payload)
     if (sent.kind !== 'report' || !scope) throw new Error('An import reports.')
     const [lot] = sent.report.lots
-    const losses = [{ uid: v7(), fault: 's-crack', also: [], outcome: 'waster' as const, pieces: 2, neighbour: false, features: {} }]
+    const losses = [
+      {
+        uid: v7(),
+        fault: 's-crack',
+        also: [],
+        outcome: 'waster' as const,
+        pieces: 2,
+        neighbour: false,
+        features: {},
+      },
+    ]
     await saveRevision(
       scope,
       {
         firing: firing.uid,
         revision: v7(),
         input: {
-          kind: 'amend', base: 1, deviceTime: null, reason: 'Seen later.',
-          report: { ...sent.report, lots: [{ lot: lot?.lot ?? '', notLookedAt: 0, losses }, ...sent.report.lots.slice(1)] },
+          kind: 'amend',
+          base: 1,
+          deviceTime: null,
+          reason: 'Seen later.',
+          report: {
+            ...sent.report,
+            lots: [{ lot: lot?.lot ?? '', notLookedAt: 0, losses }, ...sent.report.lots.slice(1)],
+          },
         },
       },
       await deps(),
@@ -99,7 +153,10 @@ describe('importLots', () => {
 
   it('leaves roll-ups that are those of its lots', async () => {
     const { scope } = await importText(SHEET)
-    expect(scope && (await checkRollups(scope, await deps()))).toEqual({ firings: 2, differences: 0 })
+    expect(scope && (await checkRollups(scope, await deps()))).toEqual({
+      firings: 2,
+      differences: 0,
+    })
   })
 
   it('writes nothing when a line is wrong, and says everything that is', async () => {
@@ -107,7 +164,10 @@ describe('importLots', () => {
     const wrong = SHEET.replace('2026-03-01', '2026-03-09').replace(';glaze;2026', ';salt;2026')
     const refused = await importText(wrong, { network }).catch((error: unknown) => error)
     expect(refused).toBeInstanceOf(ImportRefused)
-    expect((refused as ImportRefused).problems).toMatchObject([{ row: 2, column: 'kind' }, { row: 4, column: 'date' }])
+    expect((refused as ImportRefused).problems).toMatchObject([
+      { row: 2, column: 'kind' },
+      { row: 4, column: 'date' },
+    ])
     expect(await Network.count({ where: { slug: network } })).toBe(0)
   })
 
@@ -124,7 +184,9 @@ describe('importLots', () => {
 
   it('refuses the same content a second time, unless it is told to', async () => {
     const { network, networkId } = await importText(SHEET)
-    await expect(importText(SHEET, { network, file: 'other-name.csv' })).rejects.toThrow(/imported on 2026-03-04/)
+    await expect(importText(SHEET, { network, file: 'other-name.csv' })).rejects.toThrow(
+      /imported on 2026-03-04/,
+    )
     expect(await Firing.count({ where: { networkId } })).toBe(2)
     await importText(SHEET, { network, again: true })
     expect(await Firing.count({ where: { networkId } })).toBe(4)
@@ -132,17 +194,36 @@ describe('importLots', () => {
 
   it('writes down who imported what', async () => {
     const { networkId } = await importText(SHEET)
-    const event = await AuditEvent.findOne({ where: { networkId, action: 'lots.imported' }, rejectOnEmpty: true })
+    const event = await AuditEvent.findOne({
+      where: { networkId, action: 'lots.imported' },
+      rejectOnEmpty: true,
+    })
     expect(event.actorId).toBeNull()
-    expect(event.afterState).toMatchObject({ file: 'lots.csv', firings: 2, lots: 3, hash: expect.stringMatching(/^[0-9a-f]{64}$/) })
+    expect(event.afterState).toMatchObject({
+      file: 'lots.csv',
+      firings: 2,
+      lots: 3,
+      hash: expect.stringMatching(/^[0-9a-f]{64}$/),
+    })
   })
 })
 
 /** Findings of the network's study with q up to 0.01, as fault, names of levels and ratio. */
 async function findingsOf(networkId: number) {
-  const names = new Map((await Level.findAll({ where: { networkId } })).map(({ id, name }) => [id, name]))
-  const findings = await Finding.findAll({ where: { networkId, studioId: null }, order: ['qValue'] })
-  return findings.map(({ fault, levelId, factor, ratio, qValue }) => ({ fault, factor, level: names.get(levelId), ratio, qValue }))
+  const names = new Map(
+    (await Level.findAll({ where: { networkId } })).map(({ id, name }) => [id, name]),
+  )
+  const findings = await Finding.findAll({
+    where: { networkId, studioId: null },
+    order: ['qValue'],
+  })
+  return findings.map(({ fault, levelId, factor, ratio, qValue }) => ({
+    fault,
+    factor,
+    level: names.get(levelId),
+    ratio,
+    qValue,
+  }))
 }
 
 describe('the study of an imported sheet', () => {
@@ -153,7 +234,8 @@ describe('the study of an imported sheet', () => {
     expect(summary).toMatchObject({ firings: 300, lots: 2451, pieces: 23_769, losses: 3539 })
     if (scope) await runStudy(scope, await deps(), { windowDays: 800 })
     const findings = (await findingsOf(networkId)).filter(({ qValue }) => qValue <= 0.01)
-    const raised = (fault: string, level: string) => findings.find((each) => each.fault === fault && each.level === level)
+    const raised = (fault: string, level: string) =>
+      findings.find((each) => each.fault === fault && each.level === level)
     expect(raised('joint-crack', 'fan dried')?.ratio).toBeGreaterThan(1.5)
     expect(raised('s-crack', 'porcelain')?.ratio).toBeGreaterThan(1.5)
   })
@@ -162,26 +244,43 @@ describe('the study of an imported sheet', () => {
     const text = readFileSync(new URL('../unit/study/cohort.csv', import.meta.url), 'utf8')
     const { scope, networkId } = await importText(text)
     if (scope) await runStudy(scope, await deps())
-    const found = (await findingsOf(networkId)).filter(({ qValue }) => qValue <= 0.01).map(({ fault, level }) => `${fault}: ${level}`)
+    const found = (await findingsOf(networkId))
+      .filter(({ qValue }) => qValue <= 0.01)
+      .map(({ fault, level }) => `${fault}: ${level}`)
     expect(found).toEqual(expect.arrayContaining(['joint-crack: fan dried', 's-crack: porcelain']))
   })
 
   it('finds the first period raised in the herds of cattle, as published', async () => {
     // R package lme4, data set cbpp (Lesnoff et al. 2004): a herd stands for a firing, a period for a drying rack.
-    const { cases } = JSON.parse(readFileSync(new URL('../unit/study/modifiedPoisson.json', import.meta.url), 'utf8')) as {
-      cases: { input: { response: number[]; units: number[]; cluster: string[]; columns: Record<string, number[]> } }[]
+    const { cases } = JSON.parse(
+      readFileSync(new URL('../unit/study/modifiedPoisson.json', import.meta.url), 'utf8'),
+    ) as {
+      cases: {
+        input: {
+          response: number[]
+          units: number[]
+          cluster: string[]
+          columns: Record<string, number[]>
+        }
+      }[]
     }
     const { response = [], units = [], cluster = [], columns = {} } = cases[0]?.input ?? {}
     const lines = response.map((incidence, i) => {
-      const period = ['period2', 'period3', 'period4'].find((name) => columns[name]?.[i] === 1) ?? 'period1'
+      const period =
+        ['period2', 'period3', 'period4'].find((name) => columns[name]?.[i] === 1) ?? 'period1'
       return [cluster[i], period, units[i], incidence].join()
     })
-    const { summary, scope, networkId } = await importText(['herd,period,size,incidence', ...lines].join('\n'), {
-      as: { herd: 'firing', period: 'rack', size: 'pieces', incidence: 'lost_s_crack' },
-    })
+    const { summary, scope, networkId } = await importText(
+      ['herd,period,size,incidence', ...lines].join('\n'),
+      {
+        as: { herd: 'firing', period: 'rack', size: 'pieces', incidence: 'lost_s_crack' },
+      },
+    )
     expect(summary).toMatchObject({ firings: 15, lots: 56, pieces: 842, losses: 99 })
     if (scope) await runStudy(scope, await deps())
-    const first = (await findingsOf(networkId)).find(({ fault, level }) => fault === 's-crack' && level === 'period1')
+    const first = (await findingsOf(networkId)).find(
+      ({ fault, level }) => fault === 's-crack' && level === 'period1',
+    )
     // withinStrataTest of the reference values: 2.501.
     expect(first?.ratio).toBeCloseTo(2.501, 3)
     expect(first?.qValue).toBeLessThan(0.05)
