@@ -46,6 +46,9 @@ export function forbidden(): AppError {
 }
 
 /** One or more fields that cannot be; all problems of a form at once. */
-export function invalid(fields: Record<string, string>, message = 'Some fields need a change.'): AppError {
+export function invalid(
+  fields: Record<string, string>,
+  message = 'Some fields need a change.',
+): AppError {
   return new AppError('invalid', message, { fields })
 }

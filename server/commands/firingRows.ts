@@ -57,7 +57,11 @@ export function stateOf(firing: WholeFiring): FiringState {
   return { firing, pack, report, load: projectLoad(pack, report), first, packed, reported, last }
 }
 
-export function firingRow(networkId: number, state: FiringState, keys: Keys): CreationAttributes<Firing> {
+export function firingRow(
+  networkId: number,
+  state: FiringState,
+  keys: Keys,
+): CreationAttributes<Firing> {
   const { firing, pack, report, load, first, packed, reported, last } = state
   const kiln = keys.kilns.get(pack.kiln)
   if (!kiln) throw new Error(`Firing ${firing.uid} names a kiln that is not there: ${pack.kiln}`)
@@ -121,7 +125,14 @@ export function uidsOf(value: string | string[] | null | undefined): string[] {
 }
 
 type LotColumn =
-  'formId' | 'clayBodyId' | 'clayConditionId' | 'glazeId' | 'formingId' | 'dryingPracticeId' | 'joiningPracticeId' | 'classId'
+  | 'formId'
+  | 'clayBodyId'
+  | 'clayConditionId'
+  | 'glazeId'
+  | 'formingId'
+  | 'dryingPracticeId'
+  | 'joiningPracticeId'
+  | 'classId'
 
 /** Every column of every row, so that all rows of a statement have the same ones. */
 function columnLevels(lot: ProjectedLot, keys: Keys): Record<LotColumn, number | null> {
@@ -149,7 +160,9 @@ export function lotLevelRows(
   const [classUid] = uidsOf(lot.input?.levels.class)
   const implied = classUid === undefined ? undefined : keys.classLevels?.get(classUid)
   const given = uidsOf(lot.input?.levels.class_level).length > 0
-  return implied === undefined || given ? rows : [...rows, { networkId, lotId, factor: 'class_level', levelId: implied }]
+  return implied === undefined || given
+    ? rows
+    : [...rows, { networkId, lotId, factor: 'class_level', levelId: implied }]
 }
 
 export function firingLevelRows(

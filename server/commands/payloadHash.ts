@@ -14,5 +14,7 @@ function canonical(value: unknown): unknown {
 
 /** SHA-256 of a payload in hex, the same for the same values in any order of keys: tells a repeat from another body. */
 export function payloadHash(payload: unknown): string {
-  return createHash('sha256').update(JSON.stringify(canonical(payload))).digest('hex')
+  return createHash('sha256')
+    .update(JSON.stringify(canonical(payload)))
+    .digest('hex')
 }

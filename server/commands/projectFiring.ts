@@ -44,7 +44,10 @@ async function writeLots(
   transaction: Transaction,
 ): Promise<Map<string, number>> {
   const present = new Map(
-    (await Lot.findAll({ where: { networkId, firingId }, transaction })).map((lot) => [lot.uid, lot]),
+    (await Lot.findAll({ where: { networkId, firingId }, transaction })).map((lot) => [
+      lot.uid,
+      lot,
+    ]),
   )
   const wanted = new Set(state.load.lots.map(({ uid }) => uid))
   const gone = [...present.values()].filter(({ uid }) => !wanted.has(uid)).map(({ id }) => id)
@@ -73,7 +76,12 @@ async function writeLosses(
   transaction: Transaction,
 ): Promise<void> {
   const where = { networkId, firingId }
-  const before = await Loss.findAll({ where, attributes: ['uid', 'createdAt'], raw: true, transaction })
+  const before = await Loss.findAll({
+    where,
+    attributes: ['uid', 'createdAt'],
+    raw: true,
+    transaction,
+  })
   const madeAt = new Map(before.map(({ uid, createdAt }) => [uid, createdAt]))
   if (before.length > 0) await Loss.destroy({ where, transaction })
   const rows = state.load.lots.flatMap((lot) =>

@@ -50,7 +50,13 @@ export function projectLoad(pack: PackBody, report: ReportBody | null): Projecte
   ]
   const byUid = new Map(lots.map((lot) => [lot.uid, lot]))
   for (const { lot, ...away } of pack.turnedAway) {
-    add(byUid.get(lot), { ...away, also: [], outcome: 'turned-away', neighbour: false, features: {} })
+    add(byUid.get(lot), {
+      ...away,
+      also: [],
+      outcome: 'turned-away',
+      neighbour: false,
+      features: {},
+    })
   }
   for (const reported of report?.lots ?? []) {
     const lot = byUid.get(reported.lot)
@@ -60,8 +66,20 @@ export function projectLoad(pack: PackBody, report: ReportBody | null): Projecte
   return { lots, counts: lots.reduce((sum, lot) => addCounts(sum, lot.counts), { ...NO_COUNTS }) }
 }
 
-function lotOf(uid: string, position: number, pieces: number, input: ProjectedLot['input']): ProjectedLot {
-  return { uid, position, isRest: input === null, counts: { ...NO_COUNTS, pieces }, input, losses: [] }
+function lotOf(
+  uid: string,
+  position: number,
+  pieces: number,
+  input: ProjectedLot['input'],
+): ProjectedLot {
+  return {
+    uid,
+    position,
+    isRest: input === null,
+    counts: { ...NO_COUNTS, pieces },
+    input,
+    losses: [],
+  }
 }
 
 function add(lot: ProjectedLot | undefined, loss: ProjectedLoss): void {

@@ -31,7 +31,12 @@ export async function rebuildRollups(
   await holdRollups(sequelize, networkId, 'alone', transaction)
   await clearRollups(sequelize, networkId, transaction)
   const fixed = await fixedLevels(networkId, transaction)
-  const kilns = await Kiln.findAll({ where: { networkId }, attributes: ['id'], raw: true, transaction })
+  const kilns = await Kiln.findAll({
+    where: { networkId },
+    attributes: ['id'],
+    raw: true,
+    transaction,
+  })
   let firings = 0
   for (const { id } of kilns) {
     const { rollup, count } = await rollUpKiln(networkId, id, fixed, transaction)
@@ -42,11 +47,17 @@ export async function rebuildRollups(
 }
 
 /** The roll-ups of one kiln, counted from its reported firings. */
-export async function rollUpKiln(networkId: number, kilnId: number, fixed: FixedLevels, transaction: Transaction) {
+export async function rollUpKiln(
+  networkId: number,
+  kilnId: number,
+  fixed: FixedLevels,
+  transaction: Transaction,
+) {
   const rollup = new Rollup()
-  const after = (afterId: number) => rollupFirings(networkId, { kilnId, afterId, limit: PAGE }, fixed, transaction)
+  const after = (afterId: number) =>
+    rollupFirings(networkId, { kilnId, afterId, limit: PAGE }, fixed, transaction)
   let count = 0
-  for (let coming = after(0); ; ) {
+  for (let coming = after(0); ;) {
     const page = await coming
     const last = page.at(-1)
     // The database reads the next page while this one is added up.

@@ -72,7 +72,9 @@ export async function checkRevision(
 }
 
 function prefixed(prefix: string, fields: FieldMessages): FieldMessages {
-  return Object.fromEntries(Object.entries(fields).map(([path, message]) => [`${prefix}.${path}`, message]))
+  return Object.fromEntries(
+    Object.entries(fields).map(([path, message]) => [`${prefix}.${path}`, message]),
+  )
 }
 
 function levelUids(pack: PackBody): string[] {
@@ -93,7 +95,11 @@ function partUids(pack: PackBody, report: ReportBody | null) {
   }
 }
 
-function checkKiln(scope: Scope, kiln: KilnOfRevision | null, { pack, before }: ToCheck): FieldMessages {
+function checkKiln(
+  scope: Scope,
+  kiln: KilnOfRevision | null,
+  { pack, before }: ToCheck,
+): FieldMessages {
   if (!kiln || !can(scope, 'firings.pack', { studioId: kiln.studioId })) {
     return { kiln: 'Choose a kiln of a studio where you work.' }
   }
@@ -128,24 +134,42 @@ function checkLevels(
 ): FieldMessages {
   const fields: FieldMessages = {}
   for (const { path, factor, uids, held } of levelQuestions(pack, before)) {
-    const messages = uids.flatMap((uid) => levelMessage(levels.get(uid), factor, studioId, held.includes(uid)))
+    const messages = uids.flatMap((uid) =>
+      levelMessage(levels.get(uid), factor, studioId, held.includes(uid)),
+    )
     if (uids.length > 1 && !factorOf(factor)?.several) messages.push('Choose one.')
     if (messages[0] !== undefined) fields[path] = messages[0]
   }
   return fields
 }
 
-function levelMessage(level: LevelOfRevision | undefined, factor: string, studioId: number, held: boolean): string[] {
-  if (!level || level.factor !== factor || (level.studioId !== null && level.studioId !== studioId)) {
+function levelMessage(
+  level: LevelOfRevision | undefined,
+  factor: string,
+  studioId: number,
+  held: boolean,
+): string[] {
+  if (
+    !level ||
+    level.factor !== factor ||
+    (level.studioId !== null && level.studioId !== studioId)
+  ) {
     return ["Not in this studio's list."]
   }
-  return level.archived && !held ? ['Archived: choose another, or bring it back in the settings.'] : []
+  return level.archived && !held
+    ? ['Archived: choose another, or bring it back in the settings.']
+    : []
 }
 
 function levelQuestions(pack: PackBody, before: PackBody | null): LevelQuestion[] {
   const lotsBefore = new Map(before?.lots.map((lot) => [lot.uid, lot.levels]))
   return [
-    { path: 'programme', factor: 'programme', uids: uidsOf(pack.programme), held: uidsOf(before?.programme) },
+    {
+      path: 'programme',
+      factor: 'programme',
+      uids: uidsOf(pack.programme),
+      held: uidsOf(before?.programme),
+    },
     ...Object.entries(pack.levels).map(([factor, value]) => ({
       path: `levels.${factor}`,
       factor,
@@ -165,12 +189,19 @@ function levelQuestions(pack: PackBody, before: PackBody | null): LevelQuestion[
 
 const TAKEN = 'This mark is in use: make a new one.'
 
-function checkUids(pack: PackBody, taken: { lots: Set<string>; losses: Set<string> }): FieldMessages {
+function checkUids(
+  pack: PackBody,
+  taken: { lots: Set<string>; losses: Set<string> },
+): FieldMessages {
   return {
     ...(taken.lots.has(pack.rest) && { rest: TAKEN }),
-    ...Object.fromEntries(pack.lots.flatMap(({ uid }, i) => (taken.lots.has(uid) ? [[`lots.${i}.uid`, TAKEN]] : []))),
     ...Object.fromEntries(
-      pack.turnedAway.flatMap(({ uid }, i) => (taken.losses.has(uid) ? [[`turnedAway.${i}.uid`, TAKEN]] : [])),
+      pack.lots.flatMap(({ uid }, i) => (taken.lots.has(uid) ? [[`lots.${i}.uid`, TAKEN]] : [])),
+    ),
+    ...Object.fromEntries(
+      pack.turnedAway.flatMap(({ uid }, i) =>
+        taken.losses.has(uid) ? [[`turnedAway.${i}.uid`, TAKEN]] : [],
+      ),
     ),
   }
 }
@@ -178,7 +209,9 @@ function checkUids(pack: PackBody, taken: { lots: Set<string>; losses: Set<strin
 function checkLossUids(report: ReportBody, taken: Set<string>): FieldMessages {
   return Object.fromEntries(
     report.lots.flatMap(({ losses }, i) =>
-      losses.flatMap(({ uid }, j) => (taken.has(uid) ? [[`lots.${i}.losses.${j}.uid`, TAKEN]] : [])),
+      losses.flatMap(({ uid }, j) =>
+        taken.has(uid) ? [[`lots.${i}.losses.${j}.uid`, TAKEN]] : [],
+      ),
     ),
   )
 }

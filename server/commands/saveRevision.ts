@@ -39,14 +39,21 @@ export interface SaveRevision {
 export async function saveRevision(scope: Scope, request: SaveRevision, deps: Deps): Promise<void> {
   for (let tries = 1; ; tries += 1) {
     try {
-      return await inTransaction(deps.sequelize, (transaction) => append(scope, request, deps, transaction))
+      return await inTransaction(deps.sequelize, (transaction) =>
+        append(scope, request, deps, transaction),
+      )
     } catch (error) {
       if (!isDuplicate(error) || tries === MOST_TRIES) throw error
     }
   }
 }
 
-async function append(scope: Scope, request: SaveRevision, deps: Deps, transaction: Transaction): Promise<void> {
+async function append(
+  scope: Scope,
+  request: SaveRevision,
+  deps: Deps,
+  transaction: Transaction,
+): Promise<void> {
   const { networkId } = scope
   const { input } = request
   await holdRollups(deps.sequelize, networkId, 'shared', transaction)
@@ -55,7 +62,12 @@ async function append(scope: Scope, request: SaveRevision, deps: Deps, transacti
   if (await isRepeat(networkId, firing, request, transaction)) return
   checkTurn(scope, firing, input)
   const history = firing ? await firingHistory(networkId, firing.id, transaction) : []
-  const revision: WholeRevision = { uid: request.revision, authorId: scope.userId, at: deps.clock.now(), input }
+  const revision: WholeRevision = {
+    uid: request.revision,
+    authorId: scope.userId,
+    at: deps.clock.now(),
+    input,
+  }
   const before = history.length > 0 ? stateOf({ uid: request.firing, revisions: history }) : null
   const state = stateOf({ uid: request.firing, revisions: [...history, revision] })
   const { fields, keys } = await checkRevision(
@@ -73,7 +85,9 @@ async function append(scope: Scope, request: SaveRevision, deps: Deps, transacti
   if (Object.keys(fields).length > 0) throw invalid(fields)
   const change = async (): Promise<number> => {
     const { id } = await projectFiring(networkId, firing, state, keys, transaction)
-    await ReportRevision.create(revisionRow(networkId, id, revision, input.base + 1), { transaction })
+    await ReportRevision.create(revisionRow(networkId, id, revision, input.base + 1), {
+      transaction,
+    })
     return id
   }
   await moveRollups(networkId, firing?.id ?? null, change, deps, transaction)
@@ -88,7 +102,10 @@ async function isRepeat(
   const sent = await findRevision(networkId, revision, transaction)
   if (!sent) return false
   if (sent.firingId === firing?.id && sent.payloadHash === payloadHash(input)) return true
-  throw new AppError('different-body', 'This was sent before with something else in it. Send it as a new revision.')
+  throw new AppError(
+    'different-body',
+    'This was sent before with something else in it. Send it as a new revision.',
+  )
 }
 
 /** Is it this revision's turn, and may this person send it? */
@@ -102,12 +119,17 @@ function checkTurn(scope: Scope, firing: Firing | null, input: RevisionInput): v
   }
   if (!can(scope, `firings.${kind}`, { studioId: firing.studioId })) throw forbidden()
   if (base !== firing.revision) {
-    throw new AppError('stale', 'This firing has been changed since you opened it. Look at it again, then send your change.', {
-      details: { revision: firing.revision },
-    })
+    throw new AppError(
+      'stale',
+      'This firing has been changed since you opened it. Look at it again, then send your change.',
+      {
+        details: { revision: firing.revision },
+      },
+    )
   }
   if (firing.status === 'void') throw invalid({ kind: 'This firing is void.' })
-  if (kind === 'amend' && firing.status === 'packed') throw invalid({ kind: 'This firing has no report to amend.' })
+  if (kind === 'amend' && firing.status === 'packed')
+    throw invalid({ kind: 'This firing has no report to amend.' })
   if (kind !== 'amend' && firing.status === 'reported') {
     throw invalid({ kind: 'This firing has been reported: amend its report instead, and say why.' })
   }

@@ -26,9 +26,13 @@ export async function voidFiring(
     if (!firing) throw notFound()
     if (firing.status === 'void') throw invalid({ form: 'This firing is void already.' })
     if (base !== firing.revision) {
-      throw new AppError('stale', 'This firing has been changed since you opened it. Look at it again before you void it.', {
-        details: { revision: firing.revision },
-      })
+      throw new AppError(
+        'stale',
+        'This firing has been changed since you opened it. Look at it again before you void it.',
+        {
+          details: { revision: firing.revision },
+        },
+      )
     }
     const now = deps.clock.now()
     const payload = { kind: 'void', base, reason }

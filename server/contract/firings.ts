@@ -20,9 +20,9 @@ import { FAILED_OUTCOMES } from '../shared/counts.js'
 
 const lotFactor = z.enum(LOT_FACTORS.map((each) => each.id) as [string, ...string[]])
 const firingFactor = z.enum(
-  FIRING_FACTORS.filter((each) => !['kiln', 'programme', 'opening_temperature'].includes(each.id)).map(
-    (each) => each.id,
-  ) as [string, ...string[]],
+  FIRING_FACTORS.filter(
+    (each) => !['kiln', 'programme', 'opening_temperature'].includes(each.id),
+  ).map((each) => each.id) as [string, ...string[]],
 )
 
 /** Levels of a lot by factor; a factor that is missing or null is not recorded. Several only for factors that allow it. */
@@ -75,7 +75,9 @@ export const lossInput = z.object({
   /** "A neighbour did it": kept out of comparisons of lots and out of baselines, counted in totals. */
   neighbour: z.boolean().default(false),
   /** Features of the fault as seen, by id of the guide. */
-  features: z.record(z.string().max(40), z.union([z.string().max(40), z.array(z.string().max(40)).max(5)])).default({}),
+  features: z
+    .record(z.string().max(40), z.union([z.string().max(40), z.array(z.string().max(40)).max(5)]))
+    .default({}),
 })
 
 export const WHOLE_LOAD_CAUSES = ['power', 'probe', 'wrong-programme', 'other'] as const
@@ -86,13 +88,15 @@ export const reportBody = z.object({
   openingTemperatureC: z.int().min(-20).max(1400).nullable().default(null),
   /** The whole load failed: left out of baselines and comparisons. */
   wholeLoadFailed: z.enum(WHOLE_LOAD_CAUSES).nullable().default(null),
-  lots: z.array(
-    z.object({
-      lot: uid,
-      notLookedAt: count.default(0),
-      losses: z.array(lossInput).max(300),
-    }),
-  ).max(201),
+  lots: z
+    .array(
+      z.object({
+        lot: uid,
+        notLookedAt: count.default(0),
+        losses: z.array(lossInput).max(300),
+      }),
+    )
+    .max(201),
   note: z.string().trim().max(1000).nullable().default(null),
 })
 export type ReportBody = z.infer<typeof reportBody>
@@ -111,7 +115,12 @@ const revisionBase = {
  */
 export const revisionInput = z.discriminatedUnion('kind', [
   z.object({ kind: z.literal('pack'), ...revisionBase, pack: packBody }),
-  z.object({ kind: z.literal('report'), ...revisionBase, pack: packBody.optional(), report: reportBody }),
+  z.object({
+    kind: z.literal('report'),
+    ...revisionBase,
+    pack: packBody.optional(),
+    report: reportBody,
+  }),
   z.object({
     kind: z.literal('amend'),
     ...revisionBase,
@@ -171,7 +180,16 @@ export const firingRow = z.object({
 })
 export type FiringRow = z.infer<typeof firingRow>
 
-export const FIRING_SORTS = ['-date', 'date', '-lost', 'lost', '-pieces', 'pieces', 'kiln', '-kiln'] as const
+export const FIRING_SORTS = [
+  '-date',
+  'date',
+  '-lost',
+  'lost',
+  '-pieces',
+  'pieces',
+  'kiln',
+  '-kiln',
+] as const
 /**
  * GET /firings and /firings.csv. Lists take several uids with commas. `fault` finds firings with
  * that node or any below it; `level` is a level's uid of any factor, of a lot or of the firing: levels

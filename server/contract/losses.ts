@@ -16,8 +16,14 @@ export const lossFilters = z.object({
   kind: z.enum(['bisque', 'glaze', 'single', 'lustre', 'raku']).default('glaze'),
   fault: z.string().optional(),
   /** First and last month, YYYY-MM; the last twelve months when left out. */
-  from: z.string().regex(/^\d{4}-\d{2}$/).optional(),
-  to: z.string().regex(/^\d{4}-\d{2}$/).optional(),
+  from: z
+    .string()
+    .regex(/^\d{4}-\d{2}$/)
+    .optional(),
+  to: z
+    .string()
+    .regex(/^\d{4}-\d{2}$/)
+    .optional(),
 })
 export type LossFilters = z.infer<typeof lossFilters>
 

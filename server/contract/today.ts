@@ -14,9 +14,7 @@ export const todayOutput = z.object({
   /** Kilns whose counter is ahead of the firings reported here. */
   gaps: z.array(z.object({ kiln: ref, studio: ref, kilnNumber: z.number(), missing: z.number() })),
   /** By studio that the person may read and kind of firing: the last 30 days beside the 12 weeks before. */
-  rates: z.array(
-    z.object({ studio: ref, kind: z.string(), last30: rate, before: rate }),
-  ),
+  rates: z.array(z.object({ studio: ref, kind: z.string(), last30: rate, before: rate })),
   /** Leading findings (q ≤ 0.01 first) of the scopes the person may read, at most 5. */
   findings: z.object({ study: study.nullable(), rows: z.array(finding) }).nullable(),
 })

@@ -1,9 +1,17 @@
 import { DataTypes, Model } from 'sequelize'
-import type { CreationOptional, InferAttributes, InferCreationAttributes, Sequelize } from 'sequelize'
+import type {
+  CreationOptional,
+  InferAttributes,
+  InferCreationAttributes,
+  Sequelize,
+} from 'sequelize'
 import { guardTenant } from './tenantGuard.js'
 
 /** A level of a firing for factors that have no column of their own. */
-export class FiringLevel extends Model<InferAttributes<FiringLevel>, InferCreationAttributes<FiringLevel>> {
+export class FiringLevel extends Model<
+  InferAttributes<FiringLevel>,
+  InferCreationAttributes<FiringLevel>
+> {
   declare id: CreationOptional<number>
   declare networkId: number
   declare firingId: number

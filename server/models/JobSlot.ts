@@ -1,5 +1,10 @@
 import { DataTypes, Model } from 'sequelize'
-import type { CreationOptional, InferAttributes, InferCreationAttributes, Sequelize } from 'sequelize'
+import type {
+  CreationOptional,
+  InferAttributes,
+  InferCreationAttributes,
+  Sequelize,
+} from 'sequelize'
 
 /** One run of a job; its key makes it happen once over any number of servers. */
 export class JobSlot extends Model<InferAttributes<JobSlot>, InferCreationAttributes<JobSlot>> {

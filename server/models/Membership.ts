@@ -1,10 +1,18 @@
 import { DataTypes, Model } from 'sequelize'
-import type { CreationOptional, InferAttributes, InferCreationAttributes, Sequelize } from 'sequelize'
+import type {
+  CreationOptional,
+  InferAttributes,
+  InferCreationAttributes,
+  Sequelize,
+} from 'sequelize'
 import type { Role } from '../contract/roles.js'
 import { guardTenant } from './tenantGuard.js'
 
 /** A role of a person in one studio, or (studio null) in the whole network. */
-export class Membership extends Model<InferAttributes<Membership>, InferCreationAttributes<Membership>> {
+export class Membership extends Model<
+  InferAttributes<Membership>,
+  InferCreationAttributes<Membership>
+> {
   declare id: CreationOptional<number>
   declare networkId: number
   declare userId: number

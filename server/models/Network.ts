@@ -1,5 +1,10 @@
 import { DataTypes, Model } from 'sequelize'
-import type { CreationOptional, InferAttributes, InferCreationAttributes, Sequelize } from 'sequelize'
+import type {
+  CreationOptional,
+  InferAttributes,
+  InferCreationAttributes,
+  Sequelize,
+} from 'sequelize'
 
 /** A tenant: a group of studios that compare their losses. */
 export class Network extends Model<InferAttributes<Network>, InferCreationAttributes<Network>> {

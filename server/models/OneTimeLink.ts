@@ -1,8 +1,16 @@
 import { DataTypes, Model } from 'sequelize'
-import type { CreationOptional, InferAttributes, InferCreationAttributes, Sequelize } from 'sequelize'
+import type {
+  CreationOptional,
+  InferAttributes,
+  InferCreationAttributes,
+  Sequelize,
+} from 'sequelize'
 
 /** A link that lets a person set a password once. Only the hash of its token is kept. */
-export class OneTimeLink extends Model<InferAttributes<OneTimeLink>, InferCreationAttributes<OneTimeLink>> {
+export class OneTimeLink extends Model<
+  InferAttributes<OneTimeLink>,
+  InferCreationAttributes<OneTimeLink>
+> {
   declare id: CreationOptional<number>
   declare tokenHash: string
   declare kind: string

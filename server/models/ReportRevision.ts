@@ -1,9 +1,17 @@
 import { DataTypes, Model } from 'sequelize'
-import type { CreationOptional, InferAttributes, InferCreationAttributes, Sequelize } from 'sequelize'
+import type {
+  CreationOptional,
+  InferAttributes,
+  InferCreationAttributes,
+  Sequelize,
+} from 'sequelize'
 import { guardTenant } from './tenantGuard.js'
 
 /** What was sent about a firing, whole: history, optimistic lock and audit of the counts in one. */
-export class ReportRevision extends Model<InferAttributes<ReportRevision>, InferCreationAttributes<ReportRevision>> {
+export class ReportRevision extends Model<
+  InferAttributes<ReportRevision>,
+  InferCreationAttributes<ReportRevision>
+> {
   declare id: CreationOptional<number>
   declare networkId: number
   declare firingId: number

@@ -1,5 +1,11 @@
 import type { Ref } from '../contract/common.js'
-import type { FiringDetail, FiringRow, LossView, LotView, RevisionView } from '../contract/firings.js'
+import type {
+  FiringDetail,
+  FiringRow,
+  LossView,
+  LotView,
+  RevisionView,
+} from '../contract/firings.js'
 import { abilitiesFor, can } from '../policies/index.js'
 import type { Scope } from '../policies/index.js'
 import type { FiringDetailRows, LotDetail, NamedLevel } from '../queries/firingDetail.js'
@@ -27,7 +33,10 @@ export function presentFiringRow(row: FiringListRow, scope: Scope): FiringRow {
     kiln: { uid: row.kilnUid, name: row.kilnName },
     kind: row.kind,
     status: row.status,
-    programme: row.programmeUid && row.programmeName ? { uid: row.programmeUid, name: row.programmeName } : null,
+    programme:
+      row.programmeUid && row.programmeName
+        ? { uid: row.programmeUid, name: row.programmeName }
+        : null,
     cone: row.cone,
     localDate: row.localDate,
     kilnNumber: row.kilnNumber,
@@ -57,14 +66,17 @@ export function presentFiring(
   const { firing } = detail
   const inside = can(scope, 'firings.makers', { studioId: firing.studioId })
   const hot = (firing.openingTemperatureC ?? 0) >= HOT_C
-  const nameOf = (id: number | null | undefined): string | null => (inside && id ? (detail.people.get(id) ?? null) : null)
+  const nameOf = (id: number | null | undefined): string | null =>
+    inside && id ? (detail.people.get(id) ?? null) : null
   const lots = detail.lots.map((lot) => presentLot(lot, scope))
   return {
     ...presentFiringRow(row, scope),
     timeZone: detail.timeZone,
     rest: lots.find(({ isRest }) => isRest)?.uid ?? '',
     lots,
-    levels: Object.fromEntries(detail.levels.map(({ factor, uid, name }) => [factor, { uid, name }])),
+    levels: Object.fromEntries(
+      detail.levels.map(({ factor, uid, name }) => [factor, { uid, name }]),
+    ),
     openedAt: instantOf(firing.openedAt),
     openingTemperatureC: firing.openingTemperatureC ?? null,
     note: inside ? (firing.note ?? null) : null,
@@ -73,7 +85,11 @@ export function presentFiring(
     voidReason: firing.voidReason ?? null,
     recorded: recordedShares(firing.kind, lots),
     revisions: detail.revisions.map((revision) =>
-      presentRevision(revision, counts, hot && revision.kind !== 'pack' ? null : nameOf(revision.authorId)),
+      presentRevision(
+        revision,
+        counts,
+        hot && revision.kind !== 'pack' ? null : nameOf(revision.authorId),
+      ),
     ),
   }
 }
@@ -101,7 +117,11 @@ export function presentRevision(
 /** What a revision held, without makers and notes for readers outside the studio. */
 export function presentPayload(payload: unknown, inside: boolean): unknown {
   if (inside) return payload
-  return JSON.parse(JSON.stringify(payload, (key, value: unknown) => (key === 'maker' || key === 'note' ? null : value)))
+  return JSON.parse(
+    JSON.stringify(payload, (key, value: unknown) =>
+      key === 'maker' || key === 'note' ? null : value,
+    ),
+  )
 }
 
 function presentLot({ lot, levels, losses }: LotDetail, scope: Scope): LotView {
@@ -142,8 +162,13 @@ function presentLoss(loss: LotDetail['losses'][number], lot: string): LossView {
 /** Share of the pieces for which each lot factor is recorded; glaze is no question before the glazing. */
 function recordedShares(kind: FiringKind, lots: readonly LotView[]): FiringDetail['recorded'] {
   const all = lots.reduce((sum, { pieces }) => sum + pieces, 0)
-  return LOT_FACTORS.filter(({ applies }) => !(applies === 'glaze' && kind === 'bisque')).map(({ id }) => {
-    const known = lots.reduce((sum, { levels, pieces }) => sum + (levels[id]?.length ? pieces : 0), 0)
-    return { factor: id, share: all > 0 ? known / all : 0 }
-  })
+  return LOT_FACTORS.filter(({ applies }) => !(applies === 'glaze' && kind === 'bisque')).map(
+    ({ id }) => {
+      const known = lots.reduce(
+        (sum, { levels, pieces }) => sum + (levels[id]?.length ? pieces : 0),
+        0,
+      )
+      return { factor: id, share: all > 0 ? known / all : 0 }
+    },
+  )
 }

@@ -16,7 +16,11 @@ type Families = Map<string, number[]>
  * ones had been clean loads of the usual size, of this kind as often as those that are here.
  * @param recordedShare share of pieces for which a factor is recorded, or null
  */
-export function presentCoverage(kilns: readonly KilnCoverage[], loss: Rate, recordedShare: number | null): Coverage {
+export function presentCoverage(
+  kilns: readonly KilnCoverage[],
+  loss: Rate,
+  recordedShare: number | null,
+): Coverage {
   const reported = kilns.reduce((sum, kiln) => sum + kiln.reported, 0)
   const missing = kilns.reduce((sum, kiln) => sum + missingFirings(kiln, kiln.reported), 0)
   const counted = kilns.some(({ highest }) => highest !== null)
@@ -29,7 +33,11 @@ export function presentCoverage(kilns: readonly KilnCoverage[], loss: Rate, reco
   }
 }
 
-const MONTH_NAME = new Intl.DateTimeFormat('en-GB', { month: 'long', year: 'numeric', timeZone: 'UTC' })
+const MONTH_NAME = new Intl.DateTimeFormat('en-GB', {
+  month: 'long',
+  year: 'numeric',
+  timeZone: 'UTC',
+})
 
 /** A row a month in time order; months without firings are there too. */
 export function presentMonths(sums: SumsByKey, { from, to, fault, kind }: LossCut): LossRow[] {
@@ -52,7 +60,8 @@ export function presentPlaces(
   const places = new Map<string, { label: string; families: Families }>()
   for (const kiln of kilns) {
     const uid = by === 'kiln' ? kiln.uid : kiln.studioUid
-    const label = by === 'studio' ? kiln.studioName : several ? `${kiln.name}, ${kiln.studioName}` : kiln.name
+    const label =
+      by === 'studio' ? kiln.studioName : several ? `${kiln.name}, ${kiln.studioName}` : kiln.name
     const place = places.get(uid) ?? { label, families: new Map<string, number[]>() }
     places.set(uid, place)
     addFamilies(place.families, sums.get(String(kiln.id)))
@@ -75,8 +84,14 @@ function addFamilies(into: Families, families: Families | undefined): void {
 
 /** A row a fault that was mentioned; faults below a coarser one count in it too, and it stands before them. */
 export function presentFaults(families: Families | undefined, { fault, kind }: LossCut): LossRow[] {
-  const nodes = fault === null ? FAULT_TREE : FAULT_TREE.filter(({ id }) => withDescendants(fault).includes(id))
-  const rows = nodes.map(({ id, name }) => ({ key: id, label: name, uid: null, rates: presentRates(families, id, kind) }))
+  const nodes =
+    fault === null ? FAULT_TREE : FAULT_TREE.filter(({ id }) => withDescendants(fault).includes(id))
+  const rows = nodes.map(({ id, name }) => ({
+    key: id,
+    label: name,
+    uid: null,
+    rates: presentRates(families, id, kind),
+  }))
   return byLostPieces(rows.filter(({ rates }) => rates.loss.events + rates.blemish.events > 0))
 }
 
@@ -100,7 +115,8 @@ export function presentLevels(
 ): LossRow[] {
   const rows = levels.flatMap(({ id, uid, name, studioId }) => {
     const rates = presentRates(sums.get(String(id)), fault, kind)
-    const thin = rates.loss.pieces < LEAST_OF_CLASS.pieces || rates.loss.firings < LEAST_OF_CLASS.firings
+    const thin =
+      rates.loss.pieces < LEAST_OF_CLASS.pieces || rates.loss.firings < LEAST_OF_CLASS.firings
     const hidden = factor === 'class' && thin && !can(scope, 'firings.makers', { studioId })
     return hidden ? [] : [{ key: uid, label: name, uid, rates }]
   })

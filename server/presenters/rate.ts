@@ -16,7 +16,13 @@ export function presentRate(sums: ClusterSums): Rate {
   const { G: firings, sumEvents: events, sumUnits: pieces } = sums
   const counts = { events, pieces, firings }
   if (firings < 2) {
-    return { ...counts, rate: null, lower: null, upper: null, note: firings === 0 ? 'none' : 'one-firing' }
+    return {
+      ...counts,
+      rate: null,
+      lower: null,
+      upper: null,
+      note: firings === 0 ? 'none' : 'one-firing',
+    }
   }
   const { rate, lower, upper } = clusteredRateFromSums({ ...sums, level: LEVEL })
   return { ...counts, rate, lower, upper, note: firings < FEW ? 'few-firings' : 'ok' }

@@ -6,13 +6,23 @@ import { missingFirings } from '../shared/missingFirings.js'
 import { presentRate } from './rate.js'
 
 /** Kilns whose counter is ahead of the firings that are here, packed ones among them: most missing first. */
-export function presentGaps(kilns: readonly KilnOfLosses[], counters: readonly KilnCoverage[]): Today['gaps'] {
+export function presentGaps(
+  kilns: readonly KilnOfLosses[],
+  counters: readonly KilnCoverage[],
+): Today['gaps'] {
   const byId = new Map(counters.map((counter) => [counter.kilnId, counter]))
   const gaps = kilns.flatMap(({ id, uid, name, studioUid, studioName }) => {
     const counter = byId.get(id)
     const missing = counter ? missingFirings(counter, counter.known) : 0
     if (!counter || counter.highest === null || missing === 0) return []
-    return [{ kiln: { uid, name }, studio: { uid: studioUid, name: studioName }, kilnNumber: counter.highest, missing }]
+    return [
+      {
+        kiln: { uid, name },
+        studio: { uid: studioUid, name: studioName },
+        kilnNumber: counter.highest,
+        missing,
+      },
+    ]
   })
   return gaps.sort((a, b) => b.missing - a.missing || a.kiln.name.localeCompare(b.kiln.name, 'en'))
 }

@@ -1,5 +1,16 @@
 import { Op } from 'sequelize'
-import { Firing, FiringLevel, Kiln, Level, Loss, Lot, LotLevel, ReportRevision, Studio, User } from '../models/index.js'
+import {
+  Firing,
+  FiringLevel,
+  Kiln,
+  Level,
+  Loss,
+  Lot,
+  LotLevel,
+  ReportRevision,
+  Studio,
+  User,
+} from '../models/index.js'
 import { LOT_FACTORS } from '../shared/factors.js'
 
 export interface NamedLevel {
@@ -26,7 +37,10 @@ export interface FiringDetailRows {
 }
 
 /** Where a firing is, or null when it is not there. */
-export async function findFiring(networkId: number, uid: string): Promise<{ id: number; studioId: number } | null> {
+export async function findFiring(
+  networkId: number,
+  uid: string,
+): Promise<{ id: number; studioId: number } | null> {
   return Firing.findOne({ where: { networkId, uid }, attributes: ['id', 'studioId'], raw: true })
 }
 
@@ -80,7 +94,10 @@ function columnLevels(lot: Lot): { factor: string; levelId: number }[] {
   })
 }
 
-async function levelsById(networkId: number, ids: readonly number[]): Promise<Map<number, { uid: string; name: string }>> {
+async function levelsById(
+  networkId: number,
+  ids: readonly number[],
+): Promise<Map<number, { uid: string; name: string }>> {
   const rows = await Level.findAll({
     where: { networkId, id: [...new Set(ids)] },
     attributes: ['id', 'uid', 'name'],
@@ -96,22 +113,36 @@ async function namesOf(ids: readonly (number | null | undefined)[]): Promise<Map
 }
 
 /** The newest firing of a kiln and kind that is not void, or null. */
-export async function lastFiringOf(networkId: number, kilnId: number, kind: string): Promise<number | null> {
+export async function lastFiringOf(
+  networkId: number,
+  kilnId: number,
+  kind: string,
+): Promise<number | null> {
   const row = await Firing.findOne({
     where: { networkId, kilnId, kind: kind as Firing['kind'], status: { [Op.ne]: 'void' } },
     attributes: ['id'],
-    order: [['localDate', 'DESC'], ['id', 'DESC']],
+    order: [
+      ['localDate', 'DESC'],
+      ['id', 'DESC'],
+    ],
     raw: true,
   })
   return row?.id ?? null
 }
 
 /** Where a kiln is, or null when it is not there. */
-export async function findKiln(networkId: number, uid: string): Promise<{ id: number; studioId: number } | null> {
+export async function findKiln(
+  networkId: number,
+  uid: string,
+): Promise<{ id: number; studioId: number } | null> {
   return Kiln.findOne({ where: { networkId, uid }, attributes: ['id', 'studioId'], raw: true })
 }
 
 /** One revision of a firing by its number, or null. */
-export async function findRevisionByNumber(networkId: number, firingId: number, number: number): Promise<ReportRevision | null> {
+export async function findRevisionByNumber(
+  networkId: number,
+  firingId: number,
+  number: number,
+): Promise<ReportRevision | null> {
   return ReportRevision.findOne({ where: { networkId, firingId, number } })
 }

@@ -12,17 +12,29 @@ export interface RevisionOfHistory {
 }
 
 /** The firing of that uid, locked until the transaction ends; null where there is none. */
-export async function lockFiring(networkId: number, uid: string, transaction: Transaction): Promise<Firing | null> {
+export async function lockFiring(
+  networkId: number,
+  uid: string,
+  transaction: Transaction,
+): Promise<Firing | null> {
   return Firing.findOne({ where: { networkId, uid }, lock: transaction.LOCK.UPDATE, transaction })
 }
 
 /** The revision of that uid anywhere in the network, or null. */
-export async function findRevision(networkId: number, uid: string, transaction: Transaction): Promise<ReportRevision | null> {
+export async function findRevision(
+  networkId: number,
+  uid: string,
+  transaction: Transaction,
+): Promise<ReportRevision | null> {
   return ReportRevision.findOne({ where: { networkId, uid }, transaction })
 }
 
 /** Revisions of a firing that are a load or a report, oldest first. */
-export async function firingHistory(networkId: number, firingId: number, transaction?: Transaction) {
+export async function firingHistory(
+  networkId: number,
+  firingId: number,
+  transaction?: Transaction,
+) {
   const rows = await ReportRevision.findAll({
     where: { networkId, firingId, kind: ['pack', 'report', 'amend'] },
     order: [['number', 'ASC']],

@@ -47,15 +47,20 @@ const ORDERS: Readonly<Record<FiringOrder, string>> = {
 }
 
 function from(sort: FiringOrder): string {
-  const kiln = sort.endsWith('kiln') ? 'JOIN kilns k ON k.network_id = f.network_id AND k.id = f.kiln_id' : ''
+  const kiln = sort.endsWith('kiln')
+    ? 'JOIN kilns k ON k.network_id = f.network_id AND k.id = f.kiln_id'
+    : ''
   return `FROM firings f ${kiln}`
 }
 
 export async function countFirings(sequelize: Sequelize, where: FiringWhere): Promise<number> {
-  const [row] = await sequelize.query<{ total: number }>(`SELECT COUNT(*) AS total FROM firings f WHERE ${where.sql}`, {
-    replacements: where.replacements,
-    type: QueryTypes.SELECT,
-  })
+  const [row] = await sequelize.query<{ total: number }>(
+    `SELECT COUNT(*) AS total FROM firings f WHERE ${where.sql}`,
+    {
+      replacements: where.replacements,
+      type: QueryTypes.SELECT,
+    },
+  )
   return Number(row?.total ?? 0)
 }
 
@@ -106,5 +111,6 @@ export async function* everyFiring(
   chunk = 500,
 ): AsyncGenerator<FiringListRow> {
   const ids = await firingIds(sequelize, where, sort)
-  for (let at = 0; at < ids.length; at += chunk) yield* await firingRows(sequelize, networkId, ids.slice(at, at + chunk))
+  for (let at = 0; at < ids.length; at += chunk)
+    yield* await firingRows(sequelize, networkId, ids.slice(at, at + chunk))
 }

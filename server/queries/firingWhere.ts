@@ -50,7 +50,17 @@ export async function firingWhere(
   ]
   return {
     sql: parts.filter(Boolean).join(' AND '),
-    replacements: { networkId, status, studioIds, kilnIds, kinds, from, to, faults, faultsJson: JSON.stringify(faults) },
+    replacements: {
+      networkId,
+      status,
+      studioIds,
+      kilnIds,
+      kinds,
+      from,
+      to,
+      faults,
+      faultsJson: JSON.stringify(faults),
+    },
   }
 }
 
@@ -86,17 +96,30 @@ function mentions(faults: readonly string[]): string {
 async function levelsOf(networkId: number, filter: string | undefined): Promise<string[]> {
   const uids = list(filter)
   if (uids.length === 0) return []
-  const rows = await Level.findAll({ where: { networkId, uid: uids }, attributes: ['id', 'factor', 'code'], raw: true })
+  const rows = await Level.findAll({
+    where: { networkId, uid: uids },
+    attributes: ['id', 'factor', 'code'],
+    raw: true,
+  })
   if (rows.length < new Set(uids).size) return [NOTHING]
   const factors = [...new Set(rows.map(({ factor }) => factor))]
-  return factors.map((factor) => holdsLevel(factor, rows.filter((row) => row.factor === factor)))
+  return factors.map((factor) =>
+    holdsLevel(
+      factor,
+      rows.filter((row) => row.factor === factor),
+    ),
+  )
 }
 
 /** Ids are numbers of our own and columns come from the registry: they may stand in the text. */
-function holdsLevel(factor: string, levels: readonly { id: number; code?: string | null }[]): string {
+function holdsLevel(
+  factor: string,
+  levels: readonly { id: number; code?: string | null }[],
+): string {
   const ids = levels.map(({ id }) => Number(id)).join(',')
   if (factor === 'programme') return `f.programme_id IN (${ids})`
-  if (factor === 'opening_temperature') return `(${levels.map(({ code }) => openedWithin(code ?? '')).join(' OR ')})`
+  if (factor === 'opening_temperature')
+    return `(${levels.map(({ code }) => openedWithin(code ?? '')).join(' OR ')})`
   const { of, column, several } = factorOf(factor) ?? { of: 'lot' }
   if (of === 'firing') {
     return `EXISTS (SELECT 1 FROM firing_levels x WHERE x.network_id = f.network_id AND x.firing_id = f.id AND x.level_id IN (${ids}))`

@@ -8,7 +8,10 @@ export interface NamedLevelRow {
 }
 
 /** Levels by id, archived ones too. */
-export async function levelsByIds(networkId: number, ids: readonly number[]): Promise<NamedLevelRow[]> {
+export async function levelsByIds(
+  networkId: number,
+  ids: readonly number[],
+): Promise<NamedLevelRow[]> {
   const rows = await Level.findAll({
     where: { networkId, id: [...ids] },
     attributes: ['id', 'uid', 'name', 'studioId'],

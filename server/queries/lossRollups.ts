@@ -12,7 +12,10 @@ const KEY = ['network_id', 'studio_id', 'kiln_id', 'kind', 'month', 'factor', 'l
 const FAMILIES = [
   { of: (fault: string) => fault === '', sums: [0, SUM_COLUMNS.length] },
   { of: (fault: string) => fault.startsWith('@'), sums: [0, FIRST_OF.loss] },
-  { of: (fault: string) => fault !== '' && !fault.startsWith('@'), sums: [FIRST_OF.loss, FIRST_OF_COUNTS] },
+  {
+    of: (fault: string) => fault !== '' && !fault.startsWith('@'),
+    sums: [FIRST_OF.loss, FIRST_OF_COUNTS],
+  },
 ] as const
 
 /** How a statement for rows of these sums begins and ends. */
@@ -96,7 +99,11 @@ function compare(a: string, b: string): number {
 }
 
 /** Empties the roll-ups of a network. */
-export async function clearRollups(sequelize: Sequelize, networkId: number, transaction: Transaction): Promise<void> {
+export async function clearRollups(
+  sequelize: Sequelize,
+  networkId: number,
+  transaction: Transaction,
+): Promise<void> {
   await sequelize.query('DELETE FROM loss_rollups WHERE network_id = ?', {
     replacements: [networkId],
     type: QueryTypes.DELETE,

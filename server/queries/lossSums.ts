@@ -27,7 +27,11 @@ export async function kilnsOfLosses(
 ): Promise<KilnOfLosses[]> {
   const [ofStudio, ofKiln] = [list(filters.studio), list(filters.kiln)]
   const [kilns, found] = await Promise.all([
-    Kiln.findAll({ where: { networkId }, attributes: ['id', 'uid', 'name', 'studioId'], raw: true }),
+    Kiln.findAll({
+      where: { networkId },
+      attributes: ['id', 'uid', 'name', 'studioId'],
+      raw: true,
+    }),
     Studio.findAll({ where: { networkId }, attributes: ['id', 'uid', 'name'], raw: true }),
   ])
   const byId = new Map(found.map((studio) => [studio.id, studio]))
@@ -85,14 +89,25 @@ export async function lossSums(
       ${grouping === 'level' ? '' : 'AND level_id = 0'}
     GROUP BY grouped, fault`,
     {
-      replacements: { networkId, kilnIds, kind, factor, families: familiesOf(fault), from: `${from}-01`, to: `${to}-01` },
+      replacements: {
+        networkId,
+        kilnIds,
+        kind,
+        factor,
+        families: familiesOf(fault),
+        from: `${from}-01`,
+        to: `${to}-01`,
+      },
       type: QueryTypes.SELECT,
     },
   )
   for (const row of rows) {
     const key = String(row.grouped)
     const families = groups.get(key) ?? new Map<string, number[]>()
-    families.set(String(row.fault), SUM_COLUMNS.map((column) => Number(row[column])))
+    families.set(
+      String(row.fault),
+      SUM_COLUMNS.map((column) => Number(row[column])),
+    )
     groups.set(key, families)
   }
   return groups

@@ -21,10 +21,18 @@ export interface LevelOfRevision {
 }
 
 /** The kiln of that uid with its studio's time zone, or null. */
-export async function kilnOfRevision(networkId: number, uid: string, transaction?: Transaction): Promise<KilnOfRevision | null> {
+export async function kilnOfRevision(
+  networkId: number,
+  uid: string,
+  transaction?: Transaction,
+): Promise<KilnOfRevision | null> {
   const kiln = await Kiln.findOne({ where: { networkId, uid }, transaction })
   if (!kiln) return null
-  const studio = await Studio.findOne({ where: { networkId, id: kiln.studioId }, rejectOnEmpty: true, transaction })
+  const studio = await Studio.findOne({
+    where: { networkId, id: kiln.studioId },
+    rejectOnEmpty: true,
+    transaction,
+  })
   return {
     id: kiln.id,
     uid: kiln.uid,
@@ -44,13 +52,19 @@ export async function levelsOfRevision(
   return new Map(
     rows.map(({ id, uid, factor, studioId, archivedAt, attributes }) => {
       const classLevel = typeof attributes.classLevel === 'string' ? attributes.classLevel : null
-      return [uid, { id, uid, factor, studioId: studioId ?? null, archived: Boolean(archivedAt), classLevel }]
+      return [
+        uid,
+        { id, uid, factor, studioId: studioId ?? null, archived: Boolean(archivedAt), classLevel },
+      ]
     }),
   )
 }
 
 /** Ids of the network's class levels by code. */
-export async function classLevelIds(networkId: number, transaction?: Transaction): Promise<Map<string, number>> {
+export async function classLevelIds(
+  networkId: number,
+  transaction?: Transaction,
+): Promise<Map<string, number>> {
   const rows = await Level.findAll({
     where: { networkId, factor: 'class_level', studioId: null, code: { [Op.ne]: null } },
     attributes: ['id', 'code'],
@@ -74,5 +88,8 @@ export async function uidsOfOtherFirings(
     Lot.findAll({ ...find, where: { networkId, uid: [...uids.lots], firingId: elsewhere } }),
     Loss.findAll({ ...find, where: { networkId, uid: [...uids.losses], firingId: elsewhere } }),
   ])
-  return { lots: new Set(lots.map(({ uid }) => uid)), losses: new Set(losses.map(({ uid }) => uid)) }
+  return {
+    lots: new Set(lots.map(({ uid }) => uid)),
+    losses: new Set(losses.map(({ uid }) => uid)),
+  }
 }

@@ -12,18 +12,25 @@ export interface FixedLevels {
 }
 
 /** The fixed levels that the roll-ups ask about. */
-export async function fixedLevels(networkId: number, transaction?: Transaction): Promise<FixedLevels> {
+export async function fixedLevels(
+  networkId: number,
+  transaction?: Transaction,
+): Promise<FixedLevels> {
   const rows = await Level.findAll({
     where: { networkId, factor: ['forming', 'glaze_sides', 'opening_temperature'] },
     attributes: ['id', 'factor', 'code'],
     raw: true,
     transaction,
   })
-  const coded = rows.flatMap(({ id, factor, code }) => (code === null ? [] : [{ id, factor, code }]))
+  const coded = rows.flatMap(({ id, factor, code }) =>
+    code === null ? [] : [{ id, factor, code }],
+  )
   return {
     codes: new Map(coded.map(({ id, code }) => [id, code])),
     openingBands: new Map(
-      coded.filter(({ factor }) => factor === 'opening_temperature').map(({ id, code }) => [code, id]),
+      coded
+        .filter(({ factor }) => factor === 'opening_temperature')
+        .map(({ id, code }) => [code, id]),
     ),
   }
 }
@@ -46,13 +53,26 @@ export async function rollupFirings(
     : { networkId, status: 'reported', kilnId: which.kilnId, id: { [Op.gt]: which.afterId } }
   const firings = await Firing.findAll({
     where,
-    attributes: ['id', 'studioId', 'kilnId', 'kind', 'localDate', 'programmeId', 'openingTemperatureC'],
+    attributes: [
+      'id',
+      'studioId',
+      'kilnId',
+      'kind',
+      'localDate',
+      'programmeId',
+      'openingTemperatureC',
+    ],
     order: [['id', 'ASC']],
     limit: one ? 1 : which.limit,
     raw: true,
     transaction,
   })
-  const parts = await partsOf(networkId, firings.map(({ id }) => id), fixed, transaction)
+  const parts = await partsOf(
+    networkId,
+    firings.map(({ id }) => id),
+    fixed,
+    transaction,
+  )
   return firings.map((firing) => ({
     id: firing.id,
     studioId: firing.studioId,
@@ -66,7 +86,10 @@ export async function rollupFirings(
 
 /** Levels that have a column of the firing, and the band of its opening temperature. */
 function ownLevels(
-  { programmeId, openingTemperatureC }: { programmeId?: number | null; openingTemperatureC?: number | null },
+  {
+    programmeId,
+    openingTemperatureC,
+  }: { programmeId?: number | null; openingTemperatureC?: number | null },
   { openingBands }: FixedLevels,
 ): LevelOfFactor[] {
   const band = openingBands.get(openingTemperatureBand(openingTemperatureC ?? null) ?? '')
@@ -76,7 +99,11 @@ function ownLevels(
   ]
 }
 
-function grouped<R, V>(rows: readonly R[], keyOf: (row: R) => number, valueOf: (row: R) => V): Map<number, V[]> {
+function grouped<R, V>(
+  rows: readonly R[],
+  keyOf: (row: R) => number,
+  valueOf: (row: R) => V,
+): Map<number, V[]> {
   const map = new Map<number, V[]>()
   for (const row of rows) {
     const list = map.get(keyOf(row))
@@ -87,17 +114,35 @@ function grouped<R, V>(rows: readonly R[], keyOf: (row: R) => number, valueOf: (
 }
 
 const LOT_ATTRIBUTES = [
-  'id', 'firingId', 'pieces', 'turnedAway', 'seconds', 'refires', 'wasters', 'undecided', 'notLookedAt', 'refireCount',
+  'id',
+  'firingId',
+  'pieces',
+  'turnedAway',
+  'seconds',
+  'refires',
+  'wasters',
+  'undecided',
+  'notLookedAt',
+  'refireCount',
   ...LOT_FACTORS.flatMap(({ column }) => column ?? []),
 ]
 
-async function partsOf(networkId: number, firingIds: number[], fixed: FixedLevels, transaction?: Transaction) {
+async function partsOf(
+  networkId: number,
+  firingIds: number[],
+  fixed: FixedLevels,
+  transaction?: Transaction,
+) {
   const of = { where: { networkId, firingId: firingIds }, raw: true, transaction } as const
   const lots = await Lot.findAll({ ...of, attributes: LOT_ATTRIBUTES, order: [['id', 'ASC']] })
   const [firingLevels, losses, lotLevels] = await Promise.all([
     FiringLevel.findAll({ ...of, attributes: ['firingId', 'factor', 'levelId'] }),
     Loss.findAll({ ...of, attributes: ['lotId', 'fault', 'alsoFaults', 'outcome', 'pieces'] }),
-    levelsOfLots(networkId, lots.map(({ id }) => id), transaction),
+    levelsOfLots(
+      networkId,
+      lots.map(({ id }) => id),
+      transaction,
+    ),
   ])
   const levelOf = ({ factor, levelId }: LevelOfFactor): LevelOfFactor => ({ factor, levelId })
   const lossesOf = grouped<Loss, RollupLoss>(
@@ -135,10 +180,16 @@ function levelOfText(text: string): LevelOfFactor {
   return { factor, levelId: Number(levelId) }
 }
 
-function rollupLot(lot: Lot, further: readonly LevelOfFactor[], losses: RollupLoss[], fixed: FixedLevels): RollupLot {
+function rollupLot(
+  lot: Lot,
+  further: readonly LevelOfFactor[],
+  losses: RollupLoss[],
+  fixed: FixedLevels,
+): RollupLot {
   const levels = [...columnLevels(lot), ...further]
   const of = (factor: string): LevelOfFactor[] => levels.filter((level) => level.factor === factor)
-  const codeOf = (factor: string): string | null => fixed.codes.get(of(factor)[0]?.levelId ?? 0) ?? null
+  const codeOf = (factor: string): string | null =>
+    fixed.codes.get(of(factor)[0]?.levelId ?? 0) ?? null
   const { pieces, turnedAway, seconds, refires, wasters, undecided, notLookedAt, refireCount } = lot
   return {
     pieces,

@@ -6,11 +6,18 @@ import type { FiringWhere } from './firingWhere.js'
 
 /** Packed and not reported, in the studios given. */
 export function waitingFirings(networkId: number, studioIds: readonly number[]): FiringWhere {
-  return { sql: "f.network_id = :networkId AND f.studio_id IN (:studioIds) AND f.status = 'packed'", replacements: { networkId, studioIds } }
+  return {
+    sql: "f.network_id = :networkId AND f.studio_id IN (:studioIds) AND f.status = 'packed'",
+    replacements: { networkId, studioIds },
+  }
 }
 
 /** Reported since a day, with pieces that are still undecided. */
-export function undecidedFirings(networkId: number, studioIds: readonly number[], since: string): FiringWhere {
+export function undecidedFirings(
+  networkId: number,
+  studioIds: readonly number[],
+  since: string,
+): FiringWhere {
   return {
     sql: `f.network_id = :networkId AND f.studio_id IN (:studioIds) AND f.status = 'reported'
       AND f.local_date >= :since AND f.undecided > 0`,
@@ -19,7 +26,11 @@ export function undecidedFirings(networkId: number, studioIds: readonly number[]
 }
 
 /** Reported since a day. */
-export function reportedFirings(networkId: number, studioIds: readonly number[], since: string): FiringWhere {
+export function reportedFirings(
+  networkId: number,
+  studioIds: readonly number[],
+  since: string,
+): FiringWhere {
   return {
     sql: "f.network_id = :networkId AND f.studio_id IN (:studioIds) AND f.status = 'reported' AND f.local_date >= :since",
     replacements: { networkId, studioIds, since },

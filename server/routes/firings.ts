@@ -21,9 +21,20 @@ import type { Deps } from '../deps.js'
 import { notFound } from '../errors.js'
 import { can } from '../policies/index.js'
 import type { Scope } from '../policies/index.js'
-import { presentFiring, presentFiringRow, presentPayload, presentRevision } from '../presenters/firing.js'
+import {
+  presentFiring,
+  presentFiringRow,
+  presentPayload,
+  presentRevision,
+} from '../presenters/firing.js'
 import { FIRING_CSV_HEADINGS, presentFiringCsv } from '../presenters/firingCsv.js'
-import { findFiring, findKiln, findRevisionByNumber, firingDetail, lastFiringOf } from '../queries/firingDetail.js'
+import {
+  findFiring,
+  findKiln,
+  findRevisionByNumber,
+  firingDetail,
+  lastFiringOf,
+} from '../queries/firingDetail.js'
 import { countFirings, everyFiring, firingIds, firingRows } from '../queries/firingRows.js'
 import { firingWhere } from '../queries/firingWhere.js'
 import type { FiringFilters, FiringWhere } from '../queries/firingWhere.js'
@@ -82,7 +93,12 @@ const readRoutes = [
     output: 'raw',
     handle: async ({ scope, query, deps, res }) => {
       const { sort, ...filters } = query
-      const firings = everyFiring(deps.sequelize, scope.networkId, await whereOf(scope, filters), sort)
+      const firings = everyFiring(
+        deps.sequelize,
+        scope.networkId,
+        await whereOf(scope, filters),
+        sort,
+      )
       const rows = async function* () {
         for await (const firing of firings) yield presentFiringCsv(firing)
       }
@@ -127,7 +143,10 @@ const readRoutes = [
       const { revisions } = await firingDetail(scope.networkId, loaded.id)
       const inside = can(scope, 'firings.makers', loaded)
       const counts = countsByRevision(revisions)
-      return { ...presentRevision(revision, counts, null), payload: presentPayload(revision.payload, inside) }
+      return {
+        ...presentRevision(revision, counts, null),
+        payload: presentPayload(revision.payload, inside),
+      }
     },
   }),
 ]
@@ -146,7 +165,11 @@ const writeRoutes = [
     },
     output: firingOutput,
     handle: async ({ scope, params, body, deps }) => {
-      await saveRevision(scope, { firing: params.firing, revision: params.revision, input: body }, deps)
+      await saveRevision(
+        scope,
+        { firing: params.firing, revision: params.revision, input: body },
+        deps,
+      )
       const { id } = await load({ scope, params })
       return show(id, scope, deps)
     },

@@ -9,7 +9,13 @@ const ok = z.object({ status: z.literal('ok') })
 
 /** For whoever watches the process: alive, ready to serve, and what is running. */
 export const healthRoutes = [
-  defineRoute({ method: 'get', path: '/healthz', ability: 'public', output: ok, handle: async () => ({ status: 'ok' as const }) }),
+  defineRoute({
+    method: 'get',
+    path: '/healthz',
+    ability: 'public',
+    output: ok,
+    handle: async () => ({ status: 'ok' as const }),
+  }),
   defineRoute({
     method: 'get',
     path: '/readyz',

@@ -5,7 +5,13 @@ import { PATHS } from '../contract/paths.js'
 import type { Deps } from '../deps.js'
 import { invalid } from '../errors.js'
 import type { Scope } from '../policies/index.js'
-import { presentCoverage, presentFaults, presentLevels, presentMonths, presentPlaces } from '../presenters/loss.js'
+import {
+  presentCoverage,
+  presentFaults,
+  presentLevels,
+  presentMonths,
+  presentPlaces,
+} from '../presenters/loss.js'
 import { lossCsvHeadings, presentLossCsv } from '../presenters/lossCsv.js'
 import { presentRates } from '../presenters/rate.js'
 import { kilnCoverage } from '../queries/kilnCoverage.js'
@@ -40,20 +46,45 @@ async function asked(scope: Scope, filters: LossFilters, { clock }: Deps): Promi
   const months = monthsFrom(from, to).length
   if (months === 0) throw invalid({ to: 'The last month is before the first.' })
   if (months > MOST_MONTHS) throw invalid({ from: `At most ${MOST_MONTHS} months.` })
-  if (filters.fault && !faultNode(filters.fault)) throw invalid({ fault: 'Not a fault of the tree.' })
+  if (filters.fault && !faultNode(filters.fault))
+    throw invalid({ fault: 'Not a fault of the tree.' })
   const kilns = await kilnsOfLosses(networkId, readableStudios(scope, 'losses.read'), filters)
-  const cut = { networkId, kilnIds: kilns.map(({ id }) => id), kind: filters.kind, from, to, fault: filters.fault ?? null }
+  const cut = {
+    networkId,
+    kilnIds: kilns.map(({ id }) => id),
+    kind: filters.kind,
+    from,
+    to,
+    fault: filters.fault ?? null,
+  }
   return { cut, kilns }
 }
 
-const daysOf = ({ from, to }: LossCut) => ({ from: daysOfMonth(from).first, to: daysOfMonth(to).last })
+const daysOf = ({ from, to }: LossCut) => ({
+  from: daysOfMonth(from).first,
+  to: daysOfMonth(to).last,
+})
 
-async function coverageOf({ cut }: Asked, { sequelize }: Deps, total: SumsByKey, recordedShare: number | null) {
+async function coverageOf(
+  { cut }: Asked,
+  { sequelize }: Deps,
+  total: SumsByKey,
+  recordedShare: number | null,
+) {
   const counters = await kilnCoverage(sequelize, cut.networkId, cut.kilnIds, daysOf(cut))
-  return presentCoverage(counters, presentRates(total.get(''), cut.fault, cut.kind).loss, recordedShare)
+  return presentCoverage(
+    counters,
+    presentRates(total.get(''), cut.fault, cut.kind).loss,
+    recordedShare,
+  )
 }
 
-async function breakdown(scope: Scope, dimension: string, filters: LossFilters, deps: Deps): Promise<LossBreakdown> {
+async function breakdown(
+  scope: Scope,
+  dimension: string,
+  filters: LossFilters,
+  deps: Deps,
+): Promise<LossBreakdown> {
   const ask = await asked(scope, filters, deps)
   const total = await lossSums(deps.sequelize, ask.cut, 'all')
   const { rows, recordedPieces } = await rowsBy(dimension, ask, scope, deps)
@@ -68,15 +99,29 @@ interface Rows {
   recordedPieces: number | null
 }
 
-async function rowsBy(dimension: string, { cut, kilns }: Asked, scope: Scope, { sequelize }: Deps): Promise<Rows> {
+async function rowsBy(
+  dimension: string,
+  { cut, kilns }: Asked,
+  scope: Scope,
+  { sequelize }: Deps,
+): Promise<Rows> {
   if (dimension === 'month') {
-    return { rows: presentMonths(await lossSums(sequelize, cut, 'month'), cut), recordedPieces: null }
+    return {
+      rows: presentMonths(await lossSums(sequelize, cut, 'month'), cut),
+      recordedPieces: null,
+    }
   }
   if (dimension === 'kiln' || dimension === 'studio') {
-    return { rows: presentPlaces(await lossSums(sequelize, cut, 'kiln'), kilns, dimension, cut), recordedPieces: null }
+    return {
+      rows: presentPlaces(await lossSums(sequelize, cut, 'kiln'), kilns, dimension, cut),
+      recordedPieces: null,
+    }
   }
   if (dimension === 'fault') {
-    return { rows: presentFaults((await lossSums(sequelize, cut, 'fault')).get(''), cut), recordedPieces: null }
+    return {
+      rows: presentFaults((await lossSums(sequelize, cut, 'fault')).get(''), cut),
+      recordedPieces: null,
+    }
   }
   const sums = await lossSums(sequelize, cut, 'level', dimension)
   const levels = await levelsByIds(scope.networkId, [...sums.keys()].map(Number))

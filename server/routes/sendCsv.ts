@@ -17,7 +17,12 @@ export async function sendCsv(
   rows: Iterable<Row> | AsyncIterable<Row>,
 ): Promise<void> {
   res.type('text/csv').attachment(name)
-  const table = stringify({ bom: true, escape_formulas: true, header: true, columns: [...headings] })
+  const table = stringify({
+    bom: true,
+    escape_formulas: true,
+    header: true,
+    columns: [...headings],
+  })
   await pipeline(Readable.from(rows), table, res).catch((error: unknown) => {
     // The reader has gone, and nobody is left to tell.
     if ((error as { code?: string }).code !== 'ERR_STREAM_PREMATURE_CLOSE') throw error

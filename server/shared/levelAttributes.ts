@@ -1,13 +1,6 @@
 /** What a level may say beside its name; the contract's levelAttributes has their types. */
 export type LevelAttribute =
-  | 'family'
-  | 'cone'
-  | 'kind'
-  | 'classLevel'
-  | 'startsOn'
-  | 'endsOn'
-  | 'description'
-  | 'foodUse'
+  'family' | 'cone' | 'kind' | 'classLevel' | 'startsOn' | 'endsOn' | 'description' | 'foodUse'
 
 const PLAIN: readonly LevelAttribute[] = ['description']
 const ATTRIBUTES: Readonly<Record<string, readonly LevelAttribute[]>> = {

@@ -92,7 +92,11 @@ export function checkReport(load: LoadToCheck, report: ReportToCheck): FieldMess
     const fired = (pieces ?? 0) - (away.get(lot.lot) ?? 0)
     const failed = lot.losses.reduce((sum, loss) => sum + loss.pieces, 0)
     if (pieces !== undefined && failed + lot.notLookedAt > fired) {
-      fields[failed > 0 ? `${at}.losses` : `${at}.notLookedAt`] = failedExceeds(failed, lot.notLookedAt, Math.max(0, fired))
+      fields[failed > 0 ? `${at}.losses` : `${at}.notLookedAt`] = failedExceeds(
+        failed,
+        lot.notLookedAt,
+        Math.max(0, fired),
+      )
     }
   })
   const reported = new Set(report.lots.map(({ lot }) => lot))

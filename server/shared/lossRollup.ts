@@ -57,11 +57,22 @@ export interface RollupFiring {
 
 /** Columns of sums, in the order of `sums` of a row. */
 export const SUM_COLUMNS = [
-  'firings', 'units', 'units2',
-  'loss', 'loss_units', 'loss2',
-  'waste', 'waste_units', 'waste2',
-  'blemish', 'blemish_units', 'blemish2',
-  'offered', 'turned_away', 'undecided', 'not_looked_at',
+  'firings',
+  'units',
+  'units2',
+  'loss',
+  'loss_units',
+  'loss2',
+  'waste',
+  'waste_units',
+  'waste2',
+  'blemish',
+  'blemish_units',
+  'blemish2',
+  'offered',
+  'turned_away',
+  'undecided',
+  'not_looked_at',
 ] as const
 
 export interface RollupRow {
@@ -105,8 +116,13 @@ export class Rollup {
     if (!rows) this.slices.set(key, (rows = new Map<string, RollupRow>()))
     for (const [fault, sums] of slice) {
       let row = rows.get(fault)
-      if (!row) rows.set(fault, (row = { studioId, kilnId, kind, month, factor, levelId, fault, sums: noSums() }))
-      for (let i = 0; i < sums.length; i += 1) row.sums[i] = (row.sums[i] as number) + sign * (sums[i] as number)
+      if (!row)
+        rows.set(
+          fault,
+          (row = { studioId, kilnId, kind, month, factor, levelId, fault, sums: noSums() }),
+        )
+      for (let i = 0; i < sums.length; i += 1)
+        row.sums[i] = (row.sums[i] as number) + sign * (sums[i] as number)
     }
   }
 

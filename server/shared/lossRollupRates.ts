@@ -18,7 +18,11 @@ export interface MeasureSums {
  * @param byFault sums by family; a missing one is nought
  * @param fault a node of the tree, or null for all faults
  */
-export function measureSums(byFault: ReadonlyMap<string, readonly number[]>, fault: string | null, measure: Measure): MeasureSums {
+export function measureSums(
+  byFault: ReadonlyMap<string, readonly number[]>,
+  fault: string | null,
+  measure: Measure,
+): MeasureSums {
   const base = byFault.get('') ?? noSums()
   const group = fault === null ? undefined : riskGroup(fault)
   const differs = (group && byFault.get(groupFault(group))) ?? noSums()

@@ -1,7 +1,9 @@
 /** Months of the calendar, written YYYY-MM. */
 
-const index = (month: string): number => Number(month.slice(0, 4)) * 12 + Number(month.slice(5, 7)) - 1
-const written = (at: number): string => `${String(Math.floor(at / 12)).padStart(4, '0')}-${String((at % 12) + 1).padStart(2, '0')}`
+const index = (month: string): number =>
+  Number(month.slice(0, 4)) * 12 + Number(month.slice(5, 7)) - 1
+const written = (at: number): string =>
+  `${String(Math.floor(at / 12)).padStart(4, '0')}-${String((at % 12) + 1).padStart(2, '0')}`
 
 /** The month so many months later (earlier when negative). */
 export function addMonths(month: string, months: number): string {

@@ -1,6 +1,14 @@
 import { MEASURES, NO_COUNTS, addCounts, eventsFor, isEvent, piecesFor } from './counts.js'
 import type { LotCounts, Measure } from './counts.js'
-import { FAULT_RULES, RISK_GROUPS, faultRule, lotAtRisk, overOffered, riskGroup, withAncestors } from './faults/index.js'
+import {
+  FAULT_RULES,
+  RISK_GROUPS,
+  faultRule,
+  lotAtRisk,
+  overOffered,
+  riskGroup,
+  withAncestors,
+} from './faults/index.js'
 import type { RiskGroup } from './faults/index.js'
 import { FIRING_KINDS } from './kinds.js'
 import type { FiringKind } from './kinds.js'
@@ -72,7 +80,8 @@ function eventsByNode(kind: FiringKind, lot: RollupLot): Map<string, Events> {
       if (loss.outcome === 'turned-away' && !overOffered(rule)) continue
       const events = nodes.get(node) ?? { loss: 0, waste: 0, blemish: 0 }
       nodes.set(node, events)
-      for (const measure of MEASURES) if (isEvent(loss.outcome, measure)) events[measure] += loss.pieces
+      for (const measure of MEASURES)
+        if (isEvent(loss.outcome, measure)) events[measure] += loss.pieces
     }
   }
   return nodes
@@ -114,7 +123,11 @@ function setEvents(sums: number[], measure: Measure, events: number, units: numb
 }
 
 /** G, Σm and Σm² of one firing. */
-const unitSums = (units: number): [number, number, number] => [units > 0 ? 1 : 0, units, units * units]
+const unitSums = (units: number): [number, number, number] => [
+  units > 0 ? 1 : 0,
+  units,
+  units * units,
+]
 
 function baseSums(lots: readonly CountedLot[]): number[] {
   const sums = noSums()
@@ -122,7 +135,14 @@ function baseSums(lots: readonly CountedLot[]): number[] {
   const units = piecesFor(counts)
   sums.splice(0, 3, ...unitSums(units))
   for (const measure of MEASURES) setEvents(sums, measure, eventsFor(counts, measure), units)
-  sums.splice(FIRST_OF_COUNTS, 4, counts.pieces, counts.turnedAway, counts.undecided, counts.notLookedAt)
+  sums.splice(
+    FIRST_OF_COUNTS,
+    4,
+    counts.pieces,
+    counts.turnedAway,
+    counts.undecided,
+    counts.notLookedAt,
+  )
   return sums
 }
 
@@ -157,7 +177,11 @@ function eventsOf(lots: readonly CountedLot[]): ReadonlyMap<string, Events> {
   for (const { events } of lots) {
     for (const [node, { loss, waste, blemish }] of events) {
       const sum = all.get(node)
-      all.set(node, { loss: loss + (sum?.loss ?? 0), waste: waste + (sum?.waste ?? 0), blemish: blemish + (sum?.blemish ?? 0) })
+      all.set(node, {
+        loss: loss + (sum?.loss ?? 0),
+        waste: waste + (sum?.waste ?? 0),
+        blemish: blemish + (sum?.blemish ?? 0),
+      })
     }
   }
   return all

@@ -5,7 +5,14 @@ import type { FiringDetail } from '../../server/contract/firings.js'
 import { Firing, Loss, Lot, ReportRevision } from '../../server/models/index.js'
 import { createTestApp, fill, PATHS, signedIn } from '../support/api.js'
 import type { Agent, TestApp } from '../support/api.js'
-import { fixedLevel, makeKiln, makeLevel, makeNetwork, makePerson, makeStudio } from '../support/factories.js'
+import {
+  fixedLevel,
+  makeKiln,
+  makeLevel,
+  makeNetwork,
+  makePerson,
+  makeStudio,
+} from '../support/factories.js'
 import { loadBodies, lossBody, lotBody, makeFiring } from '../support/firings.js'
 import type { LoadOver } from '../support/firings.js'
 
@@ -60,7 +67,10 @@ describe('packing', () => {
       kiln,
       pieces: 100,
       kilnNumber: 14,
-      lots: [{ pieces: 30, levels: { form: mug }, maker: 'Ana' }, { pieces: 20, turnedAway: [{ pieces: 2 }] }],
+      lots: [
+        { pieces: 30, levels: { form: mug }, maker: 'Ana' },
+        { pieces: 20, turnedAway: [{ pieces: 2 }] },
+      ],
       rest: { turnedAway: [{ pieces: 1 }] },
     })
 
@@ -78,7 +88,12 @@ describe('packing', () => {
       reportedAt: null,
     })
     expect(body.lots).toMatchObject([
-      { isRest: false, pieces: 30, maker: 'Ana', levels: { form: [{ uid: mug.uid, name: 'mugs' }] } },
+      {
+        isRest: false,
+        pieces: 30,
+        maker: 'Ana',
+        levels: { form: [{ uid: mug.uid, name: 'mugs' }] },
+      },
       { isRest: false, pieces: 20, turnedAway: 2, losses: [{ outcome: 'turned-away', pieces: 2 }] },
       { isRest: true, uid: pack.rest, pieces: 50, turnedAway: 1 },
     ])
@@ -95,7 +110,11 @@ describe('packing', () => {
 
   it('corrects the load: lots are kept by uid, added and removed', async () => {
     const { kiln, send } = await setting()
-    const { firing, pack } = await packed(send, { kiln, pieces: 40, lots: [{ pieces: 10 }, { pieces: 5 }] })
+    const { firing, pack } = await packed(send, {
+      kiln,
+      pieces: 40,
+      lots: [{ pieces: 10 }, { pieces: 5 }],
+    })
     const [kept] = pack.lots
     const before = await Lot.findOne({ where: { networkId: kiln.networkId, uid: kept?.uid ?? '' } })
     const corrected = { ...pack, lots: [{ ...kept, pieces: 12 }, lotBody({ pieces: 3 })] }
@@ -110,20 +129,35 @@ describe('packing', () => {
 
   it('keeps several glazes in the order they were given', async () => {
     const { studio, kiln, send } = await setting()
-    const glazes = [await makeLevel({ studio, factor: 'glaze' }), await makeLevel({ studio, factor: 'glaze' })]
-    const { pack } = loadBodies({ kiln, lots: [{ pieces: 5, levels: { glaze: glazes }, glazeOverlap: true }] })
+    const glazes = [
+      await makeLevel({ studio, factor: 'glaze' }),
+      await makeLevel({ studio, factor: 'glaze' }),
+    ]
+    const { pack } = loadBodies({
+      kiln,
+      lots: [{ pieces: 5, levels: { glaze: glazes }, glazeOverlap: true }],
+    })
     const { body } = await send(v7(), { kind: 'pack', base: 0, pack }).expect(200)
-    expect(body.lots[0].levels.glaze.map(({ uid }: { uid: string }) => uid)).toEqual(glazes.map(({ uid }) => uid))
+    expect(body.lots[0].levels.glaze.map(({ uid }: { uid: string }) => uid)).toEqual(
+      glazes.map(({ uid }) => uid),
+    )
     expect(body.lots[0].glazeOverlap).toBe(true)
   })
 
   it("takes the class level from the lot's class unless it is given", async () => {
     const { network, studio, kiln, send } = await setting()
-    const course = await makeLevel({ studio, factor: 'class', attributes: { classLevel: 'first-course' } })
+    const course = await makeLevel({
+      studio,
+      factor: 'class',
+      attributes: { classLevel: 'first-course' },
+    })
     const staff = await fixedLevel(network, 'class_level', 'staff')
     const { pack } = loadBodies({
       kiln,
-      lots: [{ pieces: 5, levels: { class: course } }, { pieces: 5, levels: { class: course, class_level: staff } }],
+      lots: [
+        { pieces: 5, levels: { class: course } },
+        { pieces: 5, levels: { class: course, class_level: staff } },
+      ],
     })
     const { body } = await send(v7(), { kind: 'pack', base: 0, pack }).expect(200)
     expect(body.lots[0].levels.class_level).toMatchObject([{ name: 'first course' }])
@@ -134,7 +168,12 @@ describe('packing', () => {
     const { network, studio, kiln, send } = await setting()
     const programme = await makeLevel({ studio, factor: 'programme' })
     const fan = await fixedLevel(network, 'cooling', 'fan')
-    const { pack } = loadBodies({ kiln, programme: programme.uid, cone: '6', levels: { cooling: fan.uid } })
+    const { pack } = loadBodies({
+      kiln,
+      programme: programme.uid,
+      cone: '6',
+      levels: { cooling: fan.uid },
+    })
     const { body } = await send(v7(), { kind: 'pack', base: 0, pack }).expect(200)
     expect(body).toMatchObject({
       programme: { uid: programme.uid },
@@ -147,9 +186,17 @@ describe('packing', () => {
 describe('what a load is checked for', () => {
   it('names every field that cannot be, all at once', async () => {
     const { kiln, send } = await setting()
-    const { pack } = loadBodies({ kiln, pieces: 10, lots: [{ pieces: 8 }, { pieces: 5, turnedAway: [{ pieces: 7 }] }] })
+    const { pack } = loadBodies({
+      kiln,
+      pieces: 10,
+      lots: [{ pieces: 8 }, { pieces: 5, turnedAway: [{ pieces: 7 }] }],
+    })
     const fields = await fieldsOf(
-      send(v7(), { kind: 'pack', base: 0, pack: { ...pack, localDate: '2026-03-09', programme: v7() } }),
+      send(v7(), {
+        kind: 'pack',
+        base: 0,
+        pack: { ...pack, localDate: '2026-03-09', programme: v7() },
+      }),
     )
     expect(fields).toEqual({
       'pack.pieces': 'The lots hold 13 pieces, 3 more than the firing.',
@@ -162,16 +209,29 @@ describe('what a load is checked for', () => {
   it('names fields of the wrong shape by their path', async () => {
     const { kiln, send } = await setting()
     const { pack } = loadBodies({ kiln })
-    const fields = await fieldsOf(send(v7(), { kind: 'pack', base: 0, pack: { ...pack, pieces: 1.5, lots: [lotBody({ pieces: 0 })] } }))
-    expect(fields).toEqual({ 'pack.pieces': 'Whole pieces only.', 'pack.lots.0.pieces': 'At least one piece.' })
+    const fields = await fieldsOf(
+      send(v7(), {
+        kind: 'pack',
+        base: 0,
+        pack: { ...pack, pieces: 1.5, lots: [lotBody({ pieces: 0 })] },
+      }),
+    )
+    expect(fields).toEqual({
+      'pack.pieces': 'Whole pieces only.',
+      'pack.lots.0.pieces': 'At least one piece.',
+    })
   })
 
   it('refuses a day before 2000 and takes tomorrow, which is today somewhere', async () => {
     const { kiln, send } = await setting()
     const { pack } = loadBodies({ kiln })
-    const fields = await fieldsOf(send(v7(), { kind: 'pack', base: 0, pack: { ...pack, localDate: '1999-12-31' } }))
+    const fields = await fieldsOf(
+      send(v7(), { kind: 'pack', base: 0, pack: { ...pack, localDate: '1999-12-31' } }),
+    )
     expect(fields).toEqual({ 'pack.localDate': 'Before the year 2000: check the year.' })
-    await send(v7(), { kind: 'pack', base: 0, pack: { ...pack, localDate: '2026-03-05' } }).expect(200)
+    await send(v7(), { kind: 'pack', base: 0, pack: { ...pack, localDate: '2026-03-05' } }).expect(
+      200,
+    )
   })
 
   it("goes by the day of the kiln's studio", async () => {
@@ -213,10 +273,17 @@ describe('what a load is checked for', () => {
   it('refuses an archived level, except on the lot that holds it already', async () => {
     const { studio, kiln, send } = await setting()
     const level = await makeLevel({ studio })
-    const { firing, pack } = await packed(send, { kiln, pieces: 20, lots: [{ pieces: 5, levels: { clay_body: level } }] })
+    const { firing, pack } = await packed(send, {
+      kiln,
+      pieces: 20,
+      lots: [{ pieces: 5, levels: { clay_body: level } }],
+    })
     await level.update({ archivedAt: new Date() })
     await send(firing, { kind: 'pack', base: 1, pack: { ...pack, pieces: 25 } }).expect(200)
-    const more = { ...pack, lots: [...pack.lots, lotBody({ pieces: 1, levels: { clay_body: level } })] }
+    const more = {
+      ...pack,
+      lots: [...pack.lots, lotBody({ pieces: 1, levels: { clay_body: level } })],
+    }
     const fields = await fieldsOf(send(firing, { kind: 'pack', base: 2, pack: more }))
     expect(Object.keys(fields)).toEqual(['pack.lots.1.levels.clay_body'])
     expect(fields['pack.lots.1.levels.clay_body']).toMatch(/^Archived/)
@@ -235,7 +302,11 @@ describe('what a load is checked for', () => {
     const other = await packed(send, { kiln, lots: [{ pieces: 4 }] })
     const { pack } = loadBodies({ kiln, lots: [{ pieces: 1 }, { pieces: 1 }, { pieces: 1 }] })
     const [first, second] = pack.lots
-    const lots = [first, { ...second, uid: first?.uid }, { ...second, uid: other.pack.lots[0]?.uid }]
+    const lots = [
+      first,
+      { ...second, uid: first?.uid },
+      { ...second, uid: other.pack.lots[0]?.uid },
+    ]
     const fields = await fieldsOf(send(v7(), { kind: 'pack', base: 0, pack: { ...pack, lots } }))
     expect(Object.keys(fields).sort()).toEqual(['pack.lots.1.uid', 'pack.lots.2.uid'])
   })
@@ -271,10 +342,23 @@ describe('reporting', () => {
       kiln,
       pieces: 60,
       lots: [
-        { pieces: 20, losses: [{ pieces: 2, fault: 's-crack', also: ['warping'] }, { pieces: 1, outcome: 'refire', fault: 'crawling' }] },
-        { pieces: 10, turnedAway: [{ pieces: 1 }], losses: [{ pieces: 3, outcome: 'second', fault: 'pinholing' }] },
+        {
+          pieces: 20,
+          losses: [
+            { pieces: 2, fault: 's-crack', also: ['warping'] },
+            { pieces: 1, outcome: 'refire', fault: 'crawling' },
+          ],
+        },
+        {
+          pieces: 10,
+          turnedAway: [{ pieces: 1 }],
+          losses: [{ pieces: 3, outcome: 'second', fault: 'pinholing' }],
+        },
       ],
-      rest: { notLookedAt: 4, losses: [{ pieces: 1, outcome: 'undecided', fault: 'crack-not-named' }] },
+      rest: {
+        notLookedAt: 4,
+        losses: [{ pieces: 1, outcome: 'undecided', fault: 'crack-not-named' }],
+      },
       report: { openingTemperatureC: 80 },
     })
 
@@ -293,7 +377,12 @@ describe('reporting', () => {
       reportedBy: person.name,
     })
     expect(body.lots[0]).toMatchObject({ wasters: 2, refires: 1, seconds: 0 })
-    expect(body.lots[0].losses[0]).toMatchObject({ fault: 's-crack', also: ['warping'], outcome: 'waster', pieces: 2 })
+    expect(body.lots[0].losses[0]).toMatchObject({
+      fault: 's-crack',
+      also: ['warping'],
+      outcome: 'waster',
+      pieces: 2,
+    })
     expect(body.lots[2]).toMatchObject({ isRest: true, undecided: 1, notLookedAt: 4 })
   })
 
@@ -308,13 +397,23 @@ describe('reporting', () => {
 
   it('corrects the load as well when one is sent', async () => {
     const { kiln, send } = await setting()
-    const { firing, pack, report } = await packed(send, { kiln, pieces: 30, lots: [{ pieces: 10 }] })
+    const { firing, pack, report } = await packed(send, {
+      kiln,
+      pieces: 30,
+      lots: [{ pieces: 10 }],
+    })
     const added = lotBody({ pieces: 5 })
     const { body } = await send(firing, {
       kind: 'report',
       base: 1,
       pack: { ...pack, pieces: 33, lots: [...pack.lots, added] },
-      report: { ...report, lots: [...report.lots, { lot: added.uid, notLookedAt: 0, losses: [lossBody({ pieces: 5 })] }] },
+      report: {
+        ...report,
+        lots: [
+          ...report.lots,
+          { lot: added.uid, notLookedAt: 0, losses: [lossBody({ pieces: 5 })] },
+        ],
+      },
     }).expect(200)
     expect(body).toMatchObject({ pieces: 33, wasters: 5 })
     expect(body.lots).toHaveLength(3)
@@ -340,10 +439,21 @@ describe('reporting', () => {
 
   it('wants every lot and the rest', async () => {
     const { kiln, send } = await setting()
-    const { firing, report } = await packed(send, { kiln, pieces: 30, lots: [{ pieces: 10 }, { pieces: 10 }] })
-    const fields = await fieldsOf(send(firing, { kind: 'report', base: 1, report: { ...report, lots: report.lots.slice(0, 1) } }))
+    const { firing, report } = await packed(send, {
+      kiln,
+      pieces: 30,
+      lots: [{ pieces: 10 }, { pieces: 10 }],
+    })
+    const fields = await fieldsOf(
+      send(firing, {
+        kind: 'report',
+        base: 1,
+        report: { ...report, lots: report.lots.slice(0, 1) },
+      }),
+    )
     expect(fields).toEqual({
-      'report.lots': 'Lot 2 and the rest are missing: report each, or say how many were not looked at.',
+      'report.lots':
+        'Lot 2 and the rest are missing: report each, or say how many were not looked at.',
     })
   })
 
@@ -352,13 +462,18 @@ describe('reporting', () => {
     const { firing, report } = await packed(send, { kiln, lots: [{ pieces: 10 }] })
     const [lot, rest] = report.lots
     const lots = [lot, lot, rest, { lot: v7(), notLookedAt: 0, losses: [] }]
-    const fields = await fieldsOf(send(firing, { kind: 'report', base: 1, report: { ...report, lots } }))
+    const fields = await fieldsOf(
+      send(firing, { kind: 'report', base: 1, report: { ...report, lots } }),
+    )
     expect(Object.keys(fields).sort()).toEqual(['report.lots.1.lot', 'report.lots.3.lot'])
   })
 
   it('refuses a fault that is not in the tree', async () => {
     const { kiln, send } = await setting()
-    const { firing, report } = await packed(send, { kiln, lots: [{ pieces: 10, losses: [{ pieces: 1, fault: 'bad-luck' }] }] })
+    const { firing, report } = await packed(send, {
+      kiln,
+      lots: [{ pieces: 10, losses: [{ pieces: 1, fault: 'bad-luck' }] }],
+    })
     const fields = await fieldsOf(send(firing, { kind: 'report', base: 1, report }))
     expect(fields).toEqual({ 'report.lots.0.losses.0.fault': 'Not a fault of the tree.' })
   })
@@ -368,7 +483,9 @@ describe('reporting', () => {
     const bare = await fixedLevel(network, 'glaze_sides', 'none')
     const { firing, report } = await packed(send, {
       kiln,
-      lots: [{ pieces: 10, levels: { glaze_sides: bare }, losses: [{ pieces: 1, fault: 'crawling' }] }],
+      lots: [
+        { pieces: 10, levels: { glaze_sides: bare }, losses: [{ pieces: 1, fault: 'crawling' }] },
+      ],
     })
     await send(firing, { kind: 'report', base: 1, report }).expect(200)
   })
@@ -377,7 +494,14 @@ describe('reporting', () => {
     const { kiln, send } = await setting()
     const { firing, report } = await packed(send, {
       kiln,
-      lots: [{ pieces: 10, losses: [{ pieces: 10, fault: 'steam-blowout', neighbour: true, features: { where: ['rim'] } }] }],
+      lots: [
+        {
+          pieces: 10,
+          losses: [
+            { pieces: 10, fault: 'steam-blowout', neighbour: true, features: { where: ['rim'] } },
+          ],
+        },
+      ],
       report: { wholeLoadFailed: 'probe' },
     })
     const { body } = await send(firing, { kind: 'report', base: 1, report }).expect(200)
@@ -405,11 +529,20 @@ describe('reporting', () => {
 describe('amending', () => {
   it('shows what was counted before and why it changed', async () => {
     const { network, kiln, person, agent, send } = await setting()
-    const { firing, report } = await reported(send, { kiln, pieces: 20, rest: { losses: [{ pieces: 2 }] } })
+    const { firing, report } = await reported(send, {
+      kiln,
+      pieces: 20,
+      rest: { losses: [{ pieces: 2 }] },
+    })
     const [rest] = report.lots
     const amended = { ...report, lots: [{ ...rest, losses: [lossBody({ pieces: 5 })] }] }
 
-    const { body } = await send(firing, { kind: 'amend', base: 2, reason: 'three more behind the shelf', report: amended }).expect(200)
+    const { body } = await send(firing, {
+      kind: 'amend',
+      base: 2,
+      reason: 'three more behind the shelf',
+      report: amended,
+    }).expect(200)
 
     expect(body.revisions).toMatchObject([
       { number: 1, kind: 'pack', counts: { pieces: 20, wasters: 0 }, author: person.name },
@@ -419,7 +552,10 @@ describe('amending', () => {
     expect(body.wasters).toBe(5)
     const path = fill(PATHS.firingRevision, { network: network.slug, firing, revision: '2' })
     const { body: earlier } = await agent.get(path).expect(200)
-    expect(earlier).toMatchObject({ number: 2, payload: { kind: 'report', report: { lots: [{ losses: [{ pieces: 2 }] }] } } })
+    expect(earlier).toMatchObject({
+      number: 2,
+      payload: { kind: 'report', report: { lots: [{ losses: [{ pieces: 2 }] }] } },
+    })
   })
 
   it('needs a reason and a report', async () => {
@@ -435,7 +571,13 @@ describe('amending', () => {
     const { studio, kiln, send } = await setting()
     const right = await makeKiln({ studio })
     const { firing, pack, report } = await reported(send, { kiln, pieces: 20 })
-    const { body } = await send(firing, { kind: 'amend', base: 2, reason: 'wrong kiln', pack: { ...pack, kiln: right.uid }, report }).expect(200)
+    const { body } = await send(firing, {
+      kind: 'amend',
+      base: 2,
+      reason: 'wrong kiln',
+      pack: { ...pack, kiln: right.uid },
+      report,
+    }).expect(200)
     expect(body.kiln.uid).toBe(right.uid)
   })
 })
@@ -466,9 +608,17 @@ describe('what is sent twice or at once', () => {
     const { pack } = loadBodies({ kiln, pieces: 20 })
     const [firing, revision] = [v7(), v7()]
     await send(firing, { kind: 'pack', base: 0, pack }, revision).expect(200)
-    const other = await send(firing, { kind: 'pack', base: 0, pack: { ...pack, pieces: 21 } }, revision).expect(409)
+    const other = await send(
+      firing,
+      { kind: 'pack', base: 0, pack: { ...pack, pieces: 21 } },
+      revision,
+    ).expect(409)
     expect(other.body.error.code).toBe('different-body')
-    const elsewhere = await send(v7(), { kind: 'pack', base: 0, pack: loadBodies({ kiln }).pack }, revision).expect(409)
+    const elsewhere = await send(
+      v7(),
+      { kind: 'pack', base: 0, pack: loadBodies({ kiln }).pack },
+      revision,
+    ).expect(409)
     expect(elsewhere.body.error.code).toBe('different-body')
   })
 
@@ -485,7 +635,10 @@ describe('what is sent twice or at once', () => {
     const amend = (reason: string) => send(firing, { kind: 'amend', base: 2, reason, report })
     const answers = await Promise.all([amend('one'), amend('two')])
     expect(answers.map(({ status }) => status).sort()).toEqual([200, 409])
-    expect(answers.find(({ status }) => status === 409)?.body.error).toMatchObject({ code: 'stale', details: { revision: 3 } })
+    expect(answers.find(({ status }) => status === 409)?.body.error).toMatchObject({
+      code: 'stale',
+      details: { revision: 3 },
+    })
   })
 
   it('makes one revision of the same one sent six times at once', async () => {
@@ -503,7 +656,11 @@ describe('what is sent twice or at once', () => {
   it('takes many firings of one kiln at once', async () => {
     const { kiln, send } = await setting()
     const send1 = () => {
-      const { pack, report } = loadBodies({ kiln, pieces: 20, lots: [{ pieces: 10, losses: [{ pieces: 2 }] }] })
+      const { pack, report } = loadBodies({
+        kiln,
+        pieces: 20,
+        lots: [{ pieces: 10, losses: [{ pieces: 2 }] }],
+      })
       return send(v7(), { kind: 'report', base: 0, pack, report })
     }
     const answers = await Promise.all(Array.from({ length: 8 }, send1))
@@ -522,10 +679,26 @@ describe('voiding', () => {
 
   it('keeps the firing and its counts, with the reason, and takes no more revisions', async () => {
     const { kiln, agent, send, path } = await owner()
-    const { firing, report } = await reported(send, { kiln, pieces: 20, rest: { losses: [{ pieces: 2 }] } })
-    const { body } = await agent.post(path(firing)).send({ base: 2, reason: 'entered twice' }).expect(200)
-    expect(body).toMatchObject({ status: 'void', voidReason: 'entered twice', wasters: 2, revision: 3 })
-    expect(body.revisions[2]).toMatchObject({ kind: 'void', reason: 'entered twice', counts: { wasters: 2 } })
+    const { firing, report } = await reported(send, {
+      kiln,
+      pieces: 20,
+      rest: { losses: [{ pieces: 2 }] },
+    })
+    const { body } = await agent
+      .post(path(firing))
+      .send({ base: 2, reason: 'entered twice' })
+      .expect(200)
+    expect(body).toMatchObject({
+      status: 'void',
+      voidReason: 'entered twice',
+      wasters: 2,
+      revision: 3,
+    })
+    expect(body.revisions[2]).toMatchObject({
+      kind: 'void',
+      reason: 'entered twice',
+      counts: { wasters: 2 },
+    })
     const fields = await fieldsOf(send(firing, { kind: 'amend', base: 3, reason: 'x', report }))
     expect(fields).toEqual({ kind: 'This firing is void.' })
   })
@@ -534,7 +707,10 @@ describe('voiding', () => {
     const { kiln, agent, technician, send, path } = await owner()
     const { firing } = await reported(send, { kiln, pieces: 20 })
     await technician.post(path(firing)).send({ base: 2, reason: 'entered twice' }).expect(403)
-    const { body } = await agent.post(path(firing)).send({ base: 1, reason: 'entered twice' }).expect(409)
+    const { body } = await agent
+      .post(path(firing))
+      .send({ base: 1, reason: 'entered twice' })
+      .expect(409)
     expect(body.error).toMatchObject({ code: 'stale', details: { revision: 2 } })
   })
 })
@@ -547,7 +723,9 @@ describe('who sees what', () => {
     for (const stranger of strangers) {
       const agent = await signedIn(test.app, stranger)
       await agent.get(fill(PATHS.firing, { network: network.slug, firing })).expect(404)
-      await agent.get(fill(PATHS.firingRevision, { network: network.slug, firing, revision: '1' })).expect(404)
+      await agent
+        .get(fill(PATHS.firingRevision, { network: network.slug, firing, revision: '1' }))
+        .expect(404)
       await sender(agent, network.slug)(firing, { kind: 'pack', base: 1, pack }).expect(404)
     }
     expect(await ReportRevision.count({ where: { networkId: kiln.networkId } })).toBe(1)
@@ -561,9 +739,14 @@ describe('who sees what', () => {
       note: 'elements tired',
       lots: [{ pieces: 5, maker: 'Ana', note: 'wet' }],
     })
-    const lead = await signedIn(test.app, await makePerson({ network, roles: [{ role: 'education-lead' }] }))
+    const lead = await signedIn(
+      test.app,
+      await makePerson({ network, roles: [{ role: 'education-lead' }] }),
+    )
 
-    const { body } = await lead.get(fill(PATHS.firing, { network: network.slug, firing })).expect(200)
+    const { body } = await lead
+      .get(fill(PATHS.firing, { network: network.slug, firing }))
+      .expect(200)
 
     expect(body).toMatchObject({ note: null, packedBy: null, reportedBy: null })
     expect(body.lots[0]).toMatchObject({ maker: null, note: null })
@@ -574,16 +757,29 @@ describe('who sees what', () => {
 
   it('puts no name beside a hot opening', async () => {
     const { network, kiln, agent, send } = await setting()
-    const { firing } = await reported(send, { kiln, pieces: 20, report: { openingTemperatureC: 180 } })
-    const { body } = await agent.get(fill(PATHS.firing, { network: network.slug, firing })).expect(200)
+    const { firing } = await reported(send, {
+      kiln,
+      pieces: 20,
+      report: { openingTemperatureC: 180 },
+    })
+    const { body } = await agent
+      .get(fill(PATHS.firing, { network: network.slug, firing }))
+      .expect(200)
     expect(body.reportedBy).toBeNull()
     expect(body.revisions[1].author).toBeNull()
   })
 
   it('refuses writes of those who only read', async () => {
     const { network, kiln } = await setting()
-    const lead = await signedIn(test.app, await makePerson({ network, roles: [{ role: 'education-lead' }] }))
-    await sender(lead, network.slug)(v7(), { kind: 'pack', base: 0, pack: loadBodies({ kiln }).pack }).expect(403)
+    const lead = await signedIn(
+      test.app,
+      await makePerson({ network, roles: [{ role: 'education-lead' }] }),
+    )
+    await sender(lead, network.slug)(v7(), {
+      kind: 'pack',
+      base: 0,
+      pack: loadBodies({ kiln }).pack,
+    }).expect(403)
   })
 })
 
@@ -603,6 +799,9 @@ describe('as last time', () => {
   it('is not there for a kiln that the person may not see', async () => {
     const { network, agent } = await setting()
     const other = await makeKiln({ studio: await makeStudio({ network }) })
-    await agent.get(fill(PATHS.lastFiring, { network: network.slug })).query({ kiln: other.uid, kind: 'glaze' }).expect(404)
+    await agent
+      .get(fill(PATHS.lastFiring, { network: network.slug }))
+      .query({ kiln: other.uid, kind: 'glaze' })
+      .expect(404)
   })
 })

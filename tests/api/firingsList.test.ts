@@ -3,7 +3,14 @@ import { fixedClock } from '../../server/clock.js'
 import type { FiringRow } from '../../server/contract/firings.js'
 import { createTestApp, fill, PATHS, signedIn } from '../support/api.js'
 import type { Agent, TestApp } from '../support/api.js'
-import { fixedLevel, makeKiln, makeLevel, makeNetwork, makePerson, makeStudio } from '../support/factories.js'
+import {
+  fixedLevel,
+  makeKiln,
+  makeLevel,
+  makeNetwork,
+  makePerson,
+  makeStudio,
+} from '../support/factories.js'
 import { makeFiring } from '../support/firings.js'
 
 let test: TestApp
@@ -15,9 +22,15 @@ async function setting() {
   const network = await makeNetwork()
   const studio = await makeStudio({ network })
   const kiln = await makeKiln({ studio })
-  const agent = await signedIn(test.app, await makePerson({ roles: [{ role: 'technician', studio }] }))
+  const agent = await signedIn(
+    test.app,
+    await makePerson({ roles: [{ role: 'technician', studio }] }),
+  )
   const list = async (query: object = {}) => {
-    const { body } = await agent.get(fill(PATHS.firings, { network: network.slug })).query(query).expect(200)
+    const { body } = await agent
+      .get(fill(PATHS.firings, { network: network.slug }))
+      .query(query)
+      .expect(200)
     return body as { rows: FiringRow[]; total: number; page: number; pageSize: number }
   }
   const uids = async (query: object = {}) => (await list(query)).rows.map(({ uid }) => uid)
@@ -32,7 +45,10 @@ describe('the list of firings', () => {
     const { kiln, list } = await setting()
     const made = []
     for (const day of ['01', '02', '03', '04', '05']) {
-      made.push((await makeFiring({ kiln, status: 'packed', localDate: `2026-02-${day}`, pieces: 9 })).firing.uid)
+      made.push(
+        (await makeFiring({ kiln, status: 'packed', localDate: `2026-02-${day}`, pieces: 9 }))
+          .firing.uid,
+      )
     }
     const first = await list({ pageSize: 2 })
     expect(first).toMatchObject({ total: 5, page: 1, pageSize: 2 })
@@ -44,7 +60,15 @@ describe('the list of firings', () => {
   it('names studio, kiln and programme and what the person may do', async () => {
     const { studio, kiln, list } = await setting()
     const programme = await makeLevel({ studio, factor: 'programme' })
-    await makeFiring({ kiln, programme: programme.uid, cone: '6', kilnNumber: 14, about: true, pieces: 30, rest: { losses: [{ pieces: 2 }] } })
+    await makeFiring({
+      kiln,
+      programme: programme.uid,
+      cone: '6',
+      kilnNumber: 14,
+      about: true,
+      pieces: 30,
+      rest: { losses: [{ pieces: 2 }] },
+    })
     expect((await list()).rows).toMatchObject([
       {
         studio: { uid: studio.uid, name: studio.name },
@@ -64,8 +88,15 @@ describe('the list of firings', () => {
   it('is sorted by lost pieces, pieces and kiln', async () => {
     const { studio, kiln, uids } = await setting()
     const other = await makeKiln({ studio, name: 'A first kiln' })
-    const few = (await makeFiring({ kiln, pieces: 50, rest: { losses: [{ pieces: 1 }] } })).firing.uid
-    const many = (await makeFiring({ kiln: other, pieces: 20, rest: { losses: [{ pieces: 2, outcome: 'refire' }, { pieces: 2 }] } })).firing.uid
+    const few = (await makeFiring({ kiln, pieces: 50, rest: { losses: [{ pieces: 1 }] } })).firing
+      .uid
+    const many = (
+      await makeFiring({
+        kiln: other,
+        pieces: 20,
+        rest: { losses: [{ pieces: 2, outcome: 'refire' }, { pieces: 2 }] },
+      })
+    ).firing.uid
     expect(await uids({ sort: '-lost' })).toEqual([many, few])
     expect(await uids({ sort: 'lost' })).toEqual([few, many])
     expect(await uids({ sort: '-pieces' })).toEqual([few, many])
@@ -76,8 +107,24 @@ describe('the list of firings', () => {
     const { studio, kiln, uids } = await setting()
     const other = await makeKiln({ studio })
     const a = (await makeFiring({ kiln, localDate: '2026-01-10', rest: {}, pieces: 10 })).firing.uid
-    const b = (await makeFiring({ kiln: other, kind: 'bisque', localDate: '2026-02-10', pieces: 10, rest: { losses: [{ pieces: 1 }] } })).firing.uid
-    const c = (await makeFiring({ kiln: other, kind: 'raku', status: 'packed', localDate: '2026-03-01', pieces: 10 })).firing.uid
+    const b = (
+      await makeFiring({
+        kiln: other,
+        kind: 'bisque',
+        localDate: '2026-02-10',
+        pieces: 10,
+        rest: { losses: [{ pieces: 1 }] },
+      })
+    ).firing.uid
+    const c = (
+      await makeFiring({
+        kiln: other,
+        kind: 'raku',
+        status: 'packed',
+        localDate: '2026-03-01',
+        pieces: 10,
+      })
+    ).firing.uid
     expect(await uids({ studio: studio.uid })).toEqual([c, b, a])
     expect(await uids({ kiln: other.uid })).toEqual([c, b])
     expect(await uids({ kiln: `${kiln.uid},${other.uid}` })).toEqual([c, b, a])
@@ -90,8 +137,16 @@ describe('the list of firings', () => {
 
   it('finds a fault by any mention of it or of one below it', async () => {
     const { kiln, uids } = await setting()
-    const main = (await makeFiring({ kiln, pieces: 10, rest: { losses: [{ pieces: 1, fault: 's-crack' }] } })).firing.uid
-    const also = (await makeFiring({ kiln, pieces: 10, rest: { losses: [{ pieces: 1, fault: 'warping', also: ['star-base-crack'] }] } })).firing.uid
+    const main = (
+      await makeFiring({ kiln, pieces: 10, rest: { losses: [{ pieces: 1, fault: 's-crack' }] } })
+    ).firing.uid
+    const also = (
+      await makeFiring({
+        kiln,
+        pieces: 10,
+        rest: { losses: [{ pieces: 1, fault: 'warping', also: ['star-base-crack'] }] },
+      })
+    ).firing.uid
     await makeFiring({ kiln, pieces: 10, rest: { losses: [{ pieces: 1, fault: 'crazing' }] } })
     expect(await uids({ fault: 'base-crack', sort: 'date' })).toEqual([main, also])
     expect(await uids({ fault: 'star-base-crack' })).toEqual([also])
@@ -101,7 +156,10 @@ describe('the list of firings', () => {
   it('finds levels of lots and of the firing: of one factor either, of several all', async () => {
     const { network, studio, kiln, uids } = await setting()
     const [buff, black] = [await makeLevel({ studio }), await makeLevel({ studio })]
-    const [celadon, tenmoku] = [await makeLevel({ studio, factor: 'glaze' }), await makeLevel({ studio, factor: 'glaze' })]
+    const [celadon, tenmoku] = [
+      await makeLevel({ studio, factor: 'glaze' }),
+      await makeLevel({ studio, factor: 'glaze' }),
+    ]
     const rack = await makeLevel({ studio, factor: 'rack' })
     const programme = await makeLevel({ studio, factor: 'programme' })
     const fan = await fixedLevel(network, 'cooling', 'fan')
@@ -115,10 +173,17 @@ describe('the list of firings', () => {
         report: { openingTemperatureC: 100 },
       })
     ).firing.uid
-    const b = (await makeFiring({ kiln, lots: [{ pieces: 5, levels: { clay_body: black, glaze: celadon } }], report: { openingTemperatureC: 150 } })).firing.uid
+    const b = (
+      await makeFiring({
+        kiln,
+        lots: [{ pieces: 5, levels: { clay_body: black, glaze: celadon } }],
+        report: { openingTemperatureC: 150 },
+      })
+    ).firing.uid
     expect(await uids({ level: `${buff.uid},${black.uid}`, sort: 'date' })).toEqual([a, b])
     expect(await uids({ level: `${buff.uid},${celadon.uid}` })).toEqual([a])
-    for (const level of [tenmoku, rack, programme, fan, warm]) expect(await uids({ level: level.uid })).toEqual([a])
+    for (const level of [tenmoku, rack, programme, fan, warm])
+      expect(await uids({ level: level.uid })).toEqual([a])
     expect(await uids({ level: kiln.uid })).toEqual([])
   })
 
@@ -126,7 +191,10 @@ describe('the list of firings', () => {
     const { network, studio, kiln, uids } = await setting()
     const owner = await signedIn(test.app, await makePerson({ roles: [{ role: 'owner', studio }] }))
     const { firing } = await makeFiring({ kiln })
-    await owner.post(fill(PATHS.firingVoid, { network: network.slug, firing: firing.uid })).send({ base: 2, reason: 'twice' }).expect(200)
+    await owner
+      .post(fill(PATHS.firingVoid, { network: network.slug, firing: firing.uid }))
+      .send({ base: 2, reason: 'twice' })
+      .expect(200)
     expect(await uids()).toEqual([])
     expect(await uids({ status: 'void' })).toEqual([firing.uid])
   })
@@ -143,7 +211,17 @@ describe('the list of firings', () => {
 describe('the list as CSV', () => {
   it('holds exactly what is filtered, in the order asked for', async () => {
     const { network, kiln, agent } = await setting()
-    await makeFiring({ kiln, localDate: '2026-01-10', kilnNumber: 7, pieces: 30, rest: { turnedAway: [{ pieces: 1 }], notLookedAt: 2, losses: [{ pieces: 3 }, { pieces: 1, outcome: 'second' }] } })
+    await makeFiring({
+      kiln,
+      localDate: '2026-01-10',
+      kilnNumber: 7,
+      pieces: 30,
+      rest: {
+        turnedAway: [{ pieces: 1 }],
+        notLookedAt: 2,
+        losses: [{ pieces: 3 }, { pieces: 1, outcome: 'second' }],
+      },
+    })
     await makeFiring({ kiln, localDate: '2026-02-10', pieces: 10 })
     await makeFiring({ kiln, localDate: '2026-02-11', kind: 'bisque', pieces: 10 })
     const { text, headers } = await csvOf(agent, network.slug, { kind: 'glaze', sort: 'date' })

@@ -12,7 +12,15 @@ import type { Scope } from '../../server/policies/index.js'
 import { FAILED_OUTCOMES } from '../../server/shared/counts.js'
 import { FAULT_TREE } from '../../server/shared/faults/index.js'
 import { testDeps } from '../support/deps.js'
-import { fixedLevel, makeKiln, makeLevel, makeNetwork, makeScope, makeStudio, networkOf } from '../support/factories.js'
+import {
+  fixedLevel,
+  makeKiln,
+  makeLevel,
+  makeNetwork,
+  makeScope,
+  makeStudio,
+  networkOf,
+} from '../support/factories.js'
 import { loadBodies, makeFiring } from '../support/firings.js'
 import type { LotOver } from '../support/firings.js'
 import { rollupsOf } from '../support/rollups.js'
@@ -26,12 +34,16 @@ interface Setting {
 async function setting(): Promise<Setting> {
   const network = await makeNetwork()
   const studio = await makeStudio({ network })
-  const fixed = (factor: string, ...codes: string[]) => Promise.all(codes.map((code) => fixedLevel(network, factor, code)))
+  const fixed = (factor: string, ...codes: string[]) =>
+    Promise.all(codes.map((code) => fixedLevel(network, factor, code)))
   return {
     scope: await makeScope(network),
     kilns: [await makeKiln({ studio }), await makeKiln({ studio })],
     levels: {
-      glaze: [await makeLevel({ studio, factor: 'glaze' }), await makeLevel({ studio, factor: 'glaze' })],
+      glaze: [
+        await makeLevel({ studio, factor: 'glaze' }),
+        await makeLevel({ studio, factor: 'glaze' }),
+      ],
       clay_body: [await makeLevel({ studio }), await makeLevel({ network })],
       forming: await fixed('forming', 'thrown', 'coil', 'pinch'),
       glaze_sides: await fixed('glaze_sides', 'none', 'both'),
@@ -44,7 +56,10 @@ async function setting(): Promise<Setting> {
 const lotNumbers = fc.record({
   pieces: fc.integer({ min: 1, max: 20 }),
   parts: fc.array(fc.nat(3), { minLength: 5, maxLength: 5 }),
-  faults: fc.array(fc.constantFrom(...FAULT_TREE.map(({ id }) => id)), { minLength: 5, maxLength: 5 }),
+  faults: fc.array(fc.constantFrom(...FAULT_TREE.map(({ id }) => id)), {
+    minLength: 5,
+    maxLength: 5,
+  }),
   levels: fc.array(fc.nat(5), { minLength: 4, maxLength: 4 }),
   refired: fc.boolean(),
 })
@@ -72,10 +87,12 @@ function lotOf(n: LotNumbers, levels: Setting['levels'] | null): LotOver {
     return taken
   }
   const [away, unseen, ...failed] = n.parts.map(take)
-  const chosen = Object.entries(levels ?? {}).slice(0, 4).flatMap(([factor, list], i) => {
-    const level = list[n.levels[i] ?? 0]
-    return level ? [[factor, factor === 'glaze' && n.refired ? list : level] as const] : []
-  })
+  const chosen = Object.entries(levels ?? {})
+    .slice(0, 4)
+    .flatMap(([factor, list], i) => {
+      const level = list[n.levels[i] ?? 0]
+      return level ? [[factor, factor === 'glaze' && n.refired ? list : level] as const] : []
+    })
   return {
     pieces: n.pieces,
     levels: Object.fromEntries(chosen),
@@ -84,7 +101,14 @@ function lotOf(n: LotNumbers, levels: Setting['levels'] | null): LotOver {
     notLookedAt: unseen ?? 0,
     losses: failed.flatMap((pieces, i) =>
       pieces > 0
-        ? [{ pieces, fault: n.faults[i + 1] ?? 'other', also: i === 0 ? [n.faults[4] ?? 'other'] : [], outcome: FAILED_OUTCOMES[(i + pieces) % 4] }]
+        ? [
+            {
+              pieces,
+              fault: n.faults[i + 1] ?? 'other',
+              also: i === 0 ? [n.faults[4] ?? 'other'] : [],
+              outcome: FAILED_OUTCOMES[(i + pieces) % 4],
+            },
+          ]
         : [],
     ),
   }
@@ -116,8 +140,13 @@ interface Known {
 async function play(s: Step, known: Known[], at: Setting): Promise<void> {
   const deps = await testDeps({ clock: fixedClock('2026-04-01T12:00:00Z') })
   const { pack, report } = bodiesOf(s, at)
-  const firing = s.act === 'new' ? undefined : known.filter(({ state }) => state !== 'void')[s.target]
-  const send = async (uid: string, base: number, input: { kind: string; pack?: PackBody; report?: ReportBody }) => {
+  const firing =
+    s.act === 'new' ? undefined : known.filter(({ state }) => state !== 'void')[s.target]
+  const send = async (
+    uid: string,
+    base: number,
+    input: { kind: string; pack?: PackBody; report?: ReportBody },
+  ) => {
     const whole = revisionInput.parse({ ...input, base, reason: 'counted again' })
     await saveRevision(at.scope, { firing: uid, revision: v7(), input: whole }, deps)
   }
@@ -130,7 +159,8 @@ async function play(s: Step, known: Known[], at: Setting): Promise<void> {
   if (s.act === 'void') {
     await voidFiring(at.scope, { firing: firing.uid, base: firing.number, reason: 'twice' }, deps)
     firing.state = 'void'
-  } else if (firing.state === 'reported') await send(firing.uid, firing.number, { kind: 'amend', pack, report })
+  } else if (firing.state === 'reported')
+    await send(firing.uid, firing.number, { kind: 'amend', pack, report })
   else if (s.act === 'pack') await send(firing.uid, firing.number, { kind: 'pack', pack })
   else {
     await send(firing.uid, firing.number, { kind: 'report', pack, report })
@@ -165,7 +195,11 @@ describe('roll-ups', () => {
   })
 
   it('hold firings whose whole load failed: they count in totals', async () => {
-    const { kiln } = await makeFiring({ pieces: 30, rest: { losses: [{ pieces: 30 }] }, report: { wholeLoadFailed: 'power' } })
+    const { kiln } = await makeFiring({
+      pieces: 30,
+      rest: { losses: [{ pieces: 30 }] },
+      report: { wholeLoadFailed: 'power' },
+    })
     expect(Object.keys(await rollupsOf(kiln.networkId)).length).toBeGreaterThan(0)
   })
 

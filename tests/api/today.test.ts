@@ -33,7 +33,11 @@ describe('today', () => {
     const { network, kiln, technician } = await setting()
     const late = await makeFiring({ kiln, status: 'packed', localDate: '2026-03-03', pieces: 10 })
     const early = await makeFiring({ kiln, status: 'packed', localDate: '2026-02-20', pieces: 10 })
-    const doubtful = await makeFiring({ kiln, pieces: 10, rest: { losses: [{ pieces: 1, outcome: 'undecided' }] } })
+    const doubtful = await makeFiring({
+      kiln,
+      pieces: 10,
+      rest: { losses: [{ pieces: 1, outcome: 'undecided' }] },
+    })
     const today = await todayOf(network, technician)
     expect(today.toReport?.total).toBe(2)
     expect(today.toReport?.rows.map(({ uid }) => uid)).toEqual([early.firing.uid, late.firing.uid])
@@ -63,7 +67,12 @@ describe('today', () => {
     await makeFiring({ kiln: whole, kilnNumber: 3, pieces: 10 })
     const { gaps } = await todayOf(network, technician)
     expect(gaps).toEqual([
-      { kiln: { uid: kiln.uid, name: kiln.name }, studio: { uid: studio.uid, name: studio.name }, kilnNumber: 14, missing: 2 },
+      {
+        kiln: { uid: kiln.uid, name: kiln.name },
+        studio: { uid: studio.uid, name: studio.name },
+        kilnNumber: 14,
+        missing: 2,
+      },
     ])
   })
 
@@ -78,7 +87,15 @@ describe('today', () => {
     await makeFiring({ kiln, localDate: '2025-11-10', ...lose(16) })
     await makeFiring({ kiln, kind: 'bisque', localDate: '2026-03-01', ...lose(5) })
     const { rates } = await todayOf(network, technician)
-    expect(rates.map(({ kind, last30, before }) => [kind, last30.events, last30.pieces, before.events, before.pieces])).toEqual([
+    expect(
+      rates.map(({ kind, last30, before }) => [
+        kind,
+        last30.events,
+        last30.pieces,
+        before.events,
+        before.pieces,
+      ]),
+    ).toEqual([
       ['bisque', 5, 20, 0, 0],
       ['glaze', 3, 40, 12, 40],
     ])
@@ -87,8 +104,17 @@ describe('today', () => {
 
   it('leaves pieces that had been fired before out of its rates', async () => {
     const { network, kiln, technician } = await setting()
-    await makeFiring({ kiln, lots: [{ pieces: 10, losses: [{ pieces: 1 }] }, { pieces: 10, refireCount: 1, losses: [{ pieces: 9 }] }] })
-    expect((await todayOf(network, technician)).rates[0]?.last30).toMatchObject({ events: 1, pieces: 10 })
+    await makeFiring({
+      kiln,
+      lots: [
+        { pieces: 10, losses: [{ pieces: 1 }] },
+        { pieces: 10, refireCount: 1, losses: [{ pieces: 9 }] },
+      ],
+    })
+    expect((await todayOf(network, technician)).rates[0]?.last30).toMatchObject({
+      events: 1,
+      pieces: 10,
+    })
   })
 
   it('gives the education lead rates of every studio and nothing to report', async () => {
@@ -97,9 +123,14 @@ describe('today', () => {
     await makeFiring({ kiln, pieces: 10 })
     await makeFiring({ kiln: await makeKiln({ studio: other }), pieces: 10 })
     await makeFiring({ kiln, status: 'packed', pieces: 10, kilnNumber: 9 })
-    const today = await todayOf(network, await makePerson({ network, roles: [{ role: 'education-lead' }] }))
+    const today = await todayOf(
+      network,
+      await makePerson({ network, roles: [{ role: 'education-lead' }] }),
+    )
     expect(today).toMatchObject({ toReport: null, undecided: null, gaps: [] })
-    expect(today.rates.map(({ studio: of }) => of.uid).sort()).toEqual([studio.uid, other.uid].sort())
+    expect(today.rates.map(({ studio: of }) => of.uid).sort()).toEqual(
+      [studio.uid, other.uid].sort(),
+    )
     expect(today.findings).toEqual({ study: null, rows: [] })
   })
 
@@ -107,7 +138,12 @@ describe('today', () => {
     const { network, technician } = await setting()
     const far = await makeKiln({ studio: await makeStudio({ network }) })
     await makeFiring({ kiln: far, status: 'packed', kilnNumber: 1, pieces: 10 })
-    await makeFiring({ kiln: far, kilnNumber: 5, pieces: 10, rest: { losses: [{ pieces: 1, outcome: 'undecided' }] } })
+    await makeFiring({
+      kiln: far,
+      kilnNumber: 5,
+      pieces: 10,
+      rest: { losses: [{ pieces: 1, outcome: 'undecided' }] },
+    })
     expect(await todayOf(network, technician)).toMatchObject({
       toReport: { total: 0, rows: [] },
       undecided: { total: 0, rows: [] },
@@ -121,8 +157,12 @@ describe('today', () => {
     const { network, technician } = await setting()
     const level = await makeLevel({ network })
     const study = await makeStudy(network)
-    for (const qValue of [0.05, 0.001, 0.02, 0.002, 0.09, 0.003]) await makeFinding(study, level, qValue)
-    for (const person of [technician, await makePerson({ network, roles: [{ role: 'education-lead' }] })]) {
+    for (const qValue of [0.05, 0.001, 0.02, 0.002, 0.09, 0.003])
+      await makeFinding(study, level, qValue)
+    for (const person of [
+      technician,
+      await makePerson({ network, roles: [{ role: 'education-lead' }] }),
+    ]) {
       const { findings } = await todayOf(network, person)
       expect(findings?.study?.uid).toBe(study.uid)
       expect(findings?.rows.map((each) => each.qValue)).toEqual([0.001, 0.002, 0.003, 0.02, 0.05])
@@ -134,17 +174,47 @@ describe('today', () => {
 function makeStudy(network: Network): Promise<Study> {
   const at = new Date('2026-03-04T02:00:00Z')
   return Study.create({
-    networkId: network.id, uid: v7(), windowFrom: '2025-03-05', windowTo: '2026-03-04', firings: 40, lots: 200,
-    pieces: 3000, comparisons: 100, findings: 6, parameters: {}, watermark: 0, seed: 1, codeVersion: 'test',
-    startedAt: at, finishedAt: at,
+    networkId: network.id,
+    uid: v7(),
+    windowFrom: '2025-03-05',
+    windowTo: '2026-03-04',
+    firings: 40,
+    lots: 200,
+    pieces: 3000,
+    comparisons: 100,
+    findings: 6,
+    parameters: {},
+    watermark: 0,
+    seed: 1,
+    codeVersion: 'test',
+    startedAt: at,
+    finishedAt: at,
   })
 }
 
 function makeFinding(study: Study, level: Level, qValue: number): Promise<Finding> {
   return Finding.create({
-    networkId: study.networkId, uid: v7(), studyId: study.id, identity: `s-crack ${qValue}`, fault: 's-crack',
-    factor: 'clay_body', levelId: level.id, comparison: 'within-firing', ratio: 2, lowerLimit: 1.2, upperLimit: 3,
-    pValue: qValue / 10, qValue, exposedUnits: 100, exposedEvents: 20, unexposedUnits: 100, unexposedEvents: 10,
-    mixedStrata: 12, informativeStrata: 10, recordedShare: 0.9, levels: [], firstSeenOn: '2026-03-04',
+    networkId: study.networkId,
+    uid: v7(),
+    studyId: study.id,
+    identity: `s-crack ${qValue}`,
+    fault: 's-crack',
+    factor: 'clay_body',
+    levelId: level.id,
+    comparison: 'within-firing',
+    ratio: 2,
+    lowerLimit: 1.2,
+    upperLimit: 3,
+    pValue: qValue / 10,
+    qValue,
+    exposedUnits: 100,
+    exposedEvents: 20,
+    unexposedUnits: 100,
+    unexposedEvents: 10,
+    mixedStrata: 12,
+    informativeStrata: 10,
+    recordedShare: 0.9,
+    levels: [],
+    firstSeenOn: '2026-03-04',
   })
 }

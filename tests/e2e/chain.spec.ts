@@ -128,7 +128,10 @@ test('pack, report two faults, amend, see the rate change, study, open a finding
     await page.goto(`${AT}/settings/jobs`)
     const study = page.getByRole('region', { name: 'Study', exact: true })
     await study.getByRole('button', { name: /Run now/ }).click()
-    const newest = page.getByRole('table', { name: 'Last runs of the jobs' }).getByRole('row').nth(1)
+    const newest = page
+      .getByRole('table', { name: 'Last runs of the jobs' })
+      .getByRole('row')
+      .nth(1)
     await expect(newest).toContainText('Bram')
     await expect(newest).toContainText('done', { timeout: 120_000 })
     await page.context().close()

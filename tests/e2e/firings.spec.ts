@@ -338,7 +338,7 @@ test('the words of the list are its address, and go into the file', async ({ pag
 })
 
 const PAGES = {
-  list: { path: () => `${AT}/firings`, sign: 'reported' },
+  list: { path: () => `${AT}/firings`, sign: 'as CSV' },
   load: { path: () => `${AT}/firings/new`, sign: 'Pack it' },
   report: { path: report, sign: 'All sound' },
   firing: {

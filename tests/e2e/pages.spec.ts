@@ -23,7 +23,9 @@ test.describe('signing in', () => {
     await page.getByLabel('E-mail address').fill('maud@example.org')
     await page.getByLabel('Password').fill('not-the-password')
     await page.getByRole('button', { name: 'Sign in', exact: true }).click()
-    await expect(page.getByText('That e-mail address and password do not go together.')).toBeVisible()
+    await expect(
+      page.getByText('That e-mail address and password do not go together.'),
+    ).toBeVisible()
     await expect(page).toHaveURL(/sign-in/)
   })
 

@@ -1,11 +1,19 @@
 import { describe, expect, it } from 'vitest'
 import { checkLoad, checkReport } from '../../server/shared/loadChecks.js'
-import { failedExceeds, lotsExceed, lotsMissing, turnedAwayExceeds } from '../../server/shared/sentences/counts.js'
+import {
+  failedExceeds,
+  lotsExceed,
+  lotsMissing,
+  turnedAwayExceeds,
+} from '../../server/shared/sentences/counts.js'
 
 const load = {
   pieces: 20,
   rest: 'rest',
-  lots: [{ uid: 'a', pieces: 5 }, { uid: 'b', pieces: 5 }],
+  lots: [
+    { uid: 'a', pieces: 5 },
+    { uid: 'b', pieces: 5 },
+  ],
   turnedAway: [{ uid: 't', lot: 'a', pieces: 1 }],
 }
 const sound = (lot: string) => ({ lot, notLookedAt: 0, losses: [] })
@@ -16,7 +24,10 @@ describe('a load', () => {
   })
 
   it('may not turn more away from the rest than it holds, all entries of it together', () => {
-    const turnedAway = [{ uid: 't', lot: 'rest', pieces: 6 }, { uid: 'u', lot: 'rest', pieces: 6 }]
+    const turnedAway = [
+      { uid: 't', lot: 'rest', pieces: 6 },
+      { uid: 'u', lot: 'rest', pieces: 6 },
+    ]
     expect(checkLoad({ ...load, turnedAway })).toEqual({
       'turnedAway.0.pieces': '12 turned away, but the lot has 10 pieces.',
       'turnedAway.1.pieces': '12 turned away, but the lot has 10 pieces.',
@@ -24,7 +35,9 @@ describe('a load', () => {
   })
 
   it('may not use the mark of the rest for a lot', () => {
-    expect(Object.keys(checkLoad({ ...load, lots: [{ uid: 'rest', pieces: 5 }], turnedAway: [] }))).toEqual(['lots.0.uid'])
+    expect(
+      Object.keys(checkLoad({ ...load, lots: [{ uid: 'rest', pieces: 5 }], turnedAway: [] })),
+    ).toEqual(['lots.0.uid'])
   })
 })
 

@@ -30,7 +30,9 @@ const firing = (lots: RollupLot[], over: Partial<RollupFiring> = {}): RollupFiri
 
 /** Sums by family of one slice. */
 function slice(rollup: Rollup, factor = '', levelId = 0): Map<string, number[]> {
-  const rows = [...rollup.values()].filter((row) => row.factor === factor && row.levelId === levelId)
+  const rows = [...rollup.values()].filter(
+    (row) => row.factor === factor && row.levelId === levelId,
+  )
   return new Map(rows.map(({ fault, sums }) => [fault, sums]))
 }
 
@@ -55,23 +57,39 @@ describe('the roll-up of a firing', () => {
       sumUnitsEvents: 17 * 4 + 10 * 5,
       sumEvents2: 4 * 4 + 5 * 5,
     })
-    expect(countsOf(slice(rollup).get(''))).toEqual({ ...NO_COUNTS, pieces: 30, turnedAway: 1, refires: 3, wasters: 6, notLookedAt: 2 })
+    expect(countsOf(slice(rollup).get(''))).toEqual({
+      ...NO_COUNTS,
+      pieces: 30,
+      turnedAway: 1,
+      refires: 3,
+      wasters: 6,
+      notLookedAt: 2,
+    })
   })
 
   it('keeps no row of differences where nothing is ruled out', () => {
-    const rollup = rolled(firing([lot({ wasters: 1, losses: [{ fault: 'crazing', also: [], outcome: 'waster', pieces: 1 }] })]))
+    const rollup = rolled(
+      firing([
+        lot({ wasters: 1, losses: [{ fault: 'crazing', also: [], outcome: 'waster', pieces: 1 }] }),
+      ]),
+    )
     expect([...slice(rollup).keys()].sort()).toEqual(['', 'crazing', 'glaze-fit'])
   })
 
   it('counts a piece with two faults below one node once there', () => {
-    const losses = [{ fault: 's-crack', also: ['star-base-crack'], outcome: 'waster' as const, pieces: 2 }]
+    const losses = [
+      { fault: 's-crack', also: ['star-base-crack'], outcome: 'waster' as const, pieces: 2 },
+    ]
     const sums = slice(rolled(firing([lot({ wasters: 2, losses })])))
     expect(measureSums(sums, 'base-crack', 'loss').sumEvents).toBe(2)
     expect(measureSums(sums, 'crack-not-named', 'loss').sumEvents).toBe(2)
   })
 
   it('holds a lot with two glazes once where the factor is recorded at all', () => {
-    const levels = [{ factor: 'glaze', levelId: 7 }, { factor: 'glaze', levelId: 8 }]
+    const levels = [
+      { factor: 'glaze', levelId: 7 },
+      { factor: 'glaze', levelId: 8 },
+    ]
     const rollup = rolled(firing([lot({ levels }), lot()]))
     for (const levelId of [0, 7, 8]) expect(slice(rollup, 'glaze', levelId).get('')?.[1]).toBe(10)
   })
@@ -79,14 +97,23 @@ describe('the roll-up of a firing', () => {
   it('takes refired pieces as the denominator of refire faults alone', () => {
     const losses = [{ fault: 'refire-crack', also: [], outcome: 'waster' as const, pieces: 1 }]
     const rollup = rolled(firing([lot(), lot({ pieces: 4, refireCount: 1, wasters: 1, losses })]))
-    expect(measureSums(slice(rollup), 'refire-crack', 'loss')).toMatchObject({ sumUnits: 4, sumEvents: 1 })
+    expect(measureSums(slice(rollup), 'refire-crack', 'loss')).toMatchObject({
+      sumUnits: 4,
+      sumEvents: 1,
+    })
     expect(measureSums(slice(rollup), null, 'loss')).toMatchObject({ sumUnits: 10, sumEvents: 0 })
-    expect(measureSums(slice(rollup, REFIRED), null, 'loss')).toMatchObject({ sumUnits: 4, sumEvents: 1 })
+    expect(measureSums(slice(rollup, REFIRED), null, 'loss')).toMatchObject({
+      sumUnits: 4,
+      sumEvents: 1,
+    })
   })
 
   it('is taken away again whole', () => {
     const losses = [{ fault: 'crawling', also: [], outcome: 'second' as const, pieces: 1 }]
-    const one = firing([lot({ seconds: 1, hasGlaze: true, losses, levels: [{ factor: 'form', levelId: 3 }] })], { levels: [{ factor: 'cooling', levelId: 4 }] })
+    const one = firing(
+      [lot({ seconds: 1, hasGlaze: true, losses, levels: [{ factor: 'form', levelId: 3 }] })],
+      { levels: [{ factor: 'cooling', levelId: 4 }] },
+    )
     const rollup = rolled(one)
     addFiring(rollup, one, -1)
     expect([...rollup.values()].flatMap(({ sums }) => sums).every((sum) => sum === 0)).toBe(true)

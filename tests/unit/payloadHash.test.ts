@@ -2,7 +2,9 @@ import { expect, it } from 'vitest'
 import { payloadHash } from '../../server/commands/payloadHash.js'
 
 it('is the same for the same values in any order of keys', () => {
-  expect(payloadHash({ a: 1, b: { c: [1, { e: 2, d: 3 }] } })).toBe(payloadHash({ b: { c: [1, { d: 3, e: 2 }] }, a: 1 }))
+  expect(payloadHash({ a: 1, b: { c: [1, { e: 2, d: 3 }] } })).toBe(
+    payloadHash({ b: { c: [1, { d: 3, e: 2 }] }, a: 1 }),
+  )
 })
 
 it('is another one for another order of a list, another value or a missing null', () => {

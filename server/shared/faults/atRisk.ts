@@ -43,7 +43,13 @@ export interface RiskGroup {
 
 function profile(rule: FaultRule): string {
   const { needsGlaze, needsJoint, needsRefire, forming } = rule
-  return JSON.stringify([overOffered(rule), needsGlaze, needsJoint, needsRefire, [...forming].sort()])
+  return JSON.stringify([
+    overOffered(rule),
+    needsGlaze,
+    needsJoint,
+    needsRefire,
+    [...forming].sort(),
+  ])
 }
 
 const byProfile = new Map<string, RiskGroup>()

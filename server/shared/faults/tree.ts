@@ -72,7 +72,20 @@ export const FAULT_TREE: readonly FaultNode[] = [
 ]
 
 /** What a phone shows first at the kiln, in order. At a bisque, those that need glaze are left out. */
-export const AT_THE_KILN: readonly string[] = ['s-crack', 'rim-crack', 'joint-crack', 'dunt', 'crack-not-named', 'steam-blowout', 'warping', 'crazing', 'crawling', 'pinholing', 'running-stuck', 'handling-chip']
+export const AT_THE_KILN: readonly string[] = [
+  's-crack',
+  'rim-crack',
+  'joint-crack',
+  'dunt',
+  'crack-not-named',
+  'steam-blowout',
+  'warping',
+  'crazing',
+  'crawling',
+  'pinholing',
+  'running-stuck',
+  'handling-chip',
+]
 
 const byId = new Map(FAULT_TREE.map((node) => [node.id, node]))
 const below = new Map<string, string[]>()

@@ -14,7 +14,9 @@ export function turnedAwayExceeds(turnedAway: number, pieces: number): string {
 /** "6 failed of 5 pieces fired." or, with pieces that nobody looked at, "4 failed and 3 not looked at of 5 pieces fired." */
 export function failedExceeds(failed: number, notLookedAt: number, fired: number): string {
   const unseen = notLookedAt > 0 ? `${formatCount(notLookedAt)} not looked at` : ''
-  const parts = [failed > 0 || !unseen ? `${formatCount(failed)} failed` : '', unseen].filter(Boolean)
+  const parts = [failed > 0 || !unseen ? `${formatCount(failed)} failed` : '', unseen].filter(
+    Boolean,
+  )
   return `${parts.join(' and ')} of ${plural(fired, 'piece')} fired.`
 }
 
