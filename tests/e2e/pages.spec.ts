@@ -1,21 +1,9 @@
-import { AxeBuilder } from '@axe-core/playwright'
-import type { Page } from '@playwright/test'
 import { expect, test } from '@playwright/test'
+import { problemsOf } from '../support/axe.js'
 import { EDUCATION_LEAD, open, OWNER, TECHNICIAN } from '../support/kilnRoom.js'
 
 const AT = `/${OWNER.network}`
 const ADMIN = { email: 'bram@example.org' }
-const TAGS = ['wcag2a', 'wcag2aa', 'wcag21aa', 'wcag22aa']
-
-/** Problems that axe calls serious or worse, with the elements that have them. */
-async function problems(page: Page): Promise<unknown[]> {
-  const { violations } = await new AxeBuilder({ page }).withTags(TAGS).analyze()
-  return violations.map(({ id, impact, nodes }) => ({
-    id,
-    impact,
-    nodes: nodes.map(({ html }) => html),
-  }))
-}
 
 test.describe('signing in', () => {
   test('a wrong password is told beside the form, and nobody is let in', async ({ page }) => {
@@ -130,7 +118,7 @@ for (const theme of ['light', 'dark'] as const) {
     await page.emulateMedia({ colorScheme: theme })
     await page.goto('/sign-in')
     await expect(page.getByRole('heading', { name: 'Sign in' })).toBeVisible()
-    expect(await problems(page)).toEqual([])
+    expect(await problemsOf(page)).toEqual([])
   })
 
   test(`today, losses and findings have no accessibility problem, ${theme}`, async ({ page }) => {
@@ -139,19 +127,19 @@ for (const theme of ['light', 'dark'] as const) {
     await open(page, EDUCATION_LEAD, `${AT}/findings`)
     const first = page.getByRole('region', { name: 'Surest first' }).getByRole('link').nth(1)
     await expect(first).toBeVisible()
-    expect(await problems(page)).toEqual([])
+    expect(await problemsOf(page)).toEqual([])
     await first.click()
     await expect(page.getByRole('region', { name: 'How sure' })).toBeVisible()
-    expect(await problems(page)).toEqual([])
+    expect(await problemsOf(page)).toEqual([])
     await page.goto(`${AT}/losses`)
     await expect(
       page.getByRole('region', { name: 'By kiln' }).getByRole('row').nth(1),
     ).toBeVisible()
-    expect(await problems(page)).toEqual([])
+    expect(await problemsOf(page)).toEqual([])
     await page.goto(`${AT}/today`)
     await expect(page.getByRole('heading', { level: 1 })).toBeVisible()
     await expect(page.getByRole('region', { name: 'Last firings' })).toBeVisible()
-    expect(await problems(page)).toEqual([])
+    expect(await problemsOf(page)).toEqual([])
   })
 
   test(`settings and account have no accessibility problem, ${theme}`, async ({ page }) => {
@@ -159,7 +147,7 @@ for (const theme of ['light', 'dark'] as const) {
     await page.emulateMedia({ colorScheme: theme })
     await open(page, ADMIN, '/account')
     await expect(page.getByRole('heading', { name: 'Password' })).toBeVisible()
-    expect(await problems(page)).toEqual([])
+    expect(await problemsOf(page)).toEqual([])
     for (const section of [
       'studios',
       'kilns',
@@ -171,7 +159,7 @@ for (const theme of ['light', 'dark'] as const) {
     ]) {
       await page.goto(`${AT}/settings/${section}`)
       await expect(page.getByRole('table').first()).toBeVisible()
-      expect(await problems(page), section).toEqual([])
+      expect(await problemsOf(page), section).toEqual([])
     }
   })
 }
