@@ -1,5 +1,5 @@
 import { chmodSync, existsSync, mkdirSync, mkdtempSync, readdirSync, rmSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { availableParallelism, tmpdir } from 'node:os'
 import { basename, join, resolve } from 'node:path'
 import { KINDS, readTestArguments, VITEST_KINDS } from './arguments.mjs'
 import { buildStale } from './build.mjs'
@@ -181,9 +181,11 @@ async function runVitest(kinds, extra, bench, database) {
   const file = join(bench.folder, 'vitest.json')
   const projects = kinds.flatMap((kind) => ['--project', kind])
   const reporters = ['--reporter=default', '--reporter=json', `--outputFile.json=${file}`]
+  // Vitest leaves one core alone; on two cores half the time would go by waiting for the database.
+  const workers = [`--maxWorkers=${Math.max(2, availableParallelism() - 1)}`]
   const env = { ...bench.env, ...(database && { TEST_DATABASE_URL: database.serverUrl }) }
   const { code, output } = await step(`Testing ${kinds.join(', ')}`, 'Tested those', () =>
-    node([packageScript.vitest, 'run', ...projects, ...reporters, ...extra], {
+    node([packageScript.vitest, 'run', ...projects, ...reporters, ...workers, ...extra], {
       cwd: at(),
       env,
       check: false,
