@@ -6,6 +6,7 @@
 import { readdirSync, readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { checkReference, type FileResult } from '../statistics/checkReference.js'
+import './endOfPipe.js'
 
 type Listed = FileResult & { file: string }
 

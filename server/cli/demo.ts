@@ -17,6 +17,7 @@ import type { DemoInput } from '../demo/generateDemo.js'
 import { DemoThereError, makeDemo } from '../demo/makeDemo.js'
 import { createLogger } from '../logger.js'
 import { Network } from '../models/index.js'
+import './endOfPipe.js'
 
 const USAGE = `Usage: npm run demo -- --hash [--seed N] [--ends YYYY-MM-DD] [--json]
        npm run demo -- --into-database [--seed N] [--ends YYYY-MM-DD] [--without-study] [--if-empty] [--json]`

@@ -21,6 +21,7 @@ import { createLogger } from '../logger.js'
 import { factor as factorOf } from '../shared/factors.js'
 import { plural } from '../shared/plural.js'
 import { slugProblem } from '../shared/slugs.js'
+import './endOfPipe.js'
 
 const USAGE = `Usage: npm run import -- FILE --network SLUG [--create [--time-zone ZONE]] [--dry-run] [--again]
          [--studio NAME] [--kiln NAME] [--kind KIND] [--date YYYY-MM-DD] [--as COLUMN=NAME]... [--json]`

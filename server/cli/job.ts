@@ -24,6 +24,7 @@ import { runSlot } from '../scheduling/runSlot.js'
 import { claimSlot, ownerName } from '../scheduling/slots.js'
 import type { HeldSlot } from '../scheduling/types.js'
 import { JOBS, jobFacts } from '../shared/jobs.js'
+import './endOfPipe.js'
 
 const USAGE = 'Usage: npm run job -- NAME --network SLUG [--json]'
 const POLL_MS = 500

@@ -5,6 +5,7 @@
 import { healthRoutes } from '../routes/health.js'
 import { ROUTES } from '../routes/index.js'
 import { sessionRoutes } from '../routes/session.js'
+import './endOfPipe.js'
 
 const NOBODY = () => Promise.reject(new Error('This tool signs nobody in'))
 

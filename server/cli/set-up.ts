@@ -21,6 +21,7 @@ import type { Deps } from '../deps.js'
 import { AppError } from '../errors.js'
 import { createLogger } from '../logger.js'
 import { slugProblem } from '../shared/slugs.js'
+import './endOfPipe.js'
 
 const USAGE = `Usage: npm run set-up -- --network NAME --slug SLUG --studio NAME --time-zone ZONE --name PERSON --email EMAIL [--currency EUR] [--json]
        npm run set-up -- --link-for EMAIL [--json]`

@@ -2,6 +2,7 @@ import { readFileSync } from 'node:fs'
 import { resolve } from 'node:path'
 import { gzipSync } from 'node:zlib'
 import { BUDGETS, overBudget, pageSizes, type Manifest, type PageSize } from './pageSizes.js'
+import './endOfPipe.js'
 
 /**
  * What a browser loads before a page shows: `npm run sizes [-- --json]`. Fails when a page is over its

@@ -12,6 +12,7 @@ import { plural } from '../shared/plural.js'
 import { findingText } from '../shared/sentences/finding.js'
 import { STUDY_FAULTS, studyLots, StudyTableBuilder } from '../study/index.js'
 import type { Finding, StudyResult } from '../study/index.js'
+import './endOfPipe.js'
 
 const USAGE = 'Usage: npm run study -- --csv FILE [--studio NAME] [--seed N] [--json]'
 
